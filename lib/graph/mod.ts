@@ -1,0 +1,22 @@
+/**
+ * Graphs as typed arrays and the algorithms on them that know nothing of items or weights' units.
+ *
+ * @example
+ * ```ts
+ * import { components, graphFromPairs } from "./mod.ts";
+ * const graph = graphFromPairs(4, [[0, 1], [2, 3]]);
+ * console.assert(components(graph).count === 2);
+ * ```
+ * @module
+ */
+export {
+  degree,
+  type Graph,
+  graphFromEdges,
+  graphFromPairs,
+  inducedSubgraph,
+  otherEnd,
+  type Subgraph,
+} from "./graph.ts";
+export { type Components, components, componentSubgraphs } from "./components.ts";
+export { type TwoColouring, twoColouring } from "./two-colouring.ts";
