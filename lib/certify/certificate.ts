@@ -9,9 +9,15 @@
  *
  * Notation of the proofs: S is the set of vertices still in play, w their weight. A *term* is an
  * inequality that holds for every stable set: a clique K (an edge is a clique of two) has
- * Σ x(K) <= 1, an odd cycle C has Σ x(C) <= (|C| - 1) / 2. Multipliers λ >= 0 prove
+ * Σ x(K) <= 1, an odd cycle C has Σ x(C) <= (|C| - 1) / 2. Where vertices have already been chosen
+ * by the cases above, what is left of a right-hand side is rhs' = rhs - (chosen vertices in the
+ * term), since the chosen vertices and the rest are one stable set together. Multipliers λ >= 0
+ * prove
  *
- *     w(stable set) <= Σ_terms λ·rhs + Σ_{v in S} max(0, w(v) - Σ_{terms with v} λ).
+ *     w(stable set within S) <= Σ_terms λ·rhs' + Σ_{v in S} max(0, w(v) - Σ_{terms with v} λ).
+ *
+ * The weight of the chosen vertices is added on the way up. Below a `split` all multipliers begin at
+ * zero, and rhs' still counts every vertex chosen above.
  */
 
 /** A list of numbers: typed while it is computed, a plain array once read from JSON. */
@@ -61,6 +67,8 @@ export interface PackingProof {
  */
 export interface CasesProof {
   readonly rule: "cases";
+  /** What the integers in `set` are divided by, an integer >= 1; 2 (doubled multipliers) if absent. */
+  readonly denominator?: number;
   /** Cliques used as terms; term t < cliques.length. */
   readonly cliques: readonly Numbers[];
   /** Odd cycles used as terms, vertices in order; term cliques.length + t. */
@@ -77,7 +85,7 @@ export interface CasesProof {
  *   multipliers at zero. The bound is the sum.
  */
 export interface CaseNode {
-  /** Pairs (term, doubled multiplier), one after another: multipliers that change here. */
+  /** Pairs (term, multiplier times the denominator), one after another: what changes here. */
   readonly set?: Numbers;
   readonly on?: number;
   readonly split?: readonly Numbers[];
