@@ -1,0 +1,47 @@
+/** What the recognition of even-face embeddings answers: the embedding, or why there is none. */
+import type { Graph } from "../graph/graph.ts";
+import type { Kuratowski } from "../graph/kuratowski.ts";
+
+/**
+ * An embedding of H in the projective plane with all faces even. Its edge signature is "every edge
+ * twisted": a cycle is one-sided exactly if it is odd. Verified when it is returned: `coverNext` is
+ * a rotation system of the cover with Euler genus 0, and swapping the sheets (vertex x ^ 1, edge
+ * c ^ 1, dart d ^ 2) reverses it.
+ */
+export interface EvenFaceEmbedding {
+  readonly kind: "embedded";
+  /** Length 2m: the rotation system of H, counterclockwise on sheet 0 (see graph/embedding.ts). */
+  readonly next: Int32Array;
+  /** The bipartite double cover H × K₂, numbered as in parity/double-cover.ts; connected. */
+  readonly cover: Graph;
+  /** Length 4m: the rotation system of the cover in the sphere. */
+  readonly coverNext: Int32Array;
+}
+
+/** Why there is no even-face embedding, or why none was found. */
+export type NoEvenFaceReason =
+  /** H is not connected. */
+  | "not connected"
+  /** H is bipartite. */
+  | "bipartite"
+  /** The cover is not planar; `kuratowski` is a subdivision in it. */
+  | "cover not planar"
+  /** The cover is planar and the swap of the sheets keeps orientation. */
+  | "orientation kept"
+  /**
+   * The cover is planar, its embeddings are not unique, and the one at hand is not reversed by the
+   * swap. Happens only where the odd cycle transversal has at most two vertices.
+   */
+  | "condition not met";
+
+/** The answer "no". */
+export interface NoEvenFace {
+  readonly kind: "no";
+  readonly reason: NoEvenFaceReason;
+  /** Whether it is proved that H has no even-face embedding; otherwise none was found. */
+  readonly conclusive: boolean;
+  /** A Kuratowski subdivision in the double cover, when the reason is "cover not planar". */
+  readonly kuratowski?: Kuratowski;
+}
+
+export type EvenFaceResult = EvenFaceEmbedding | NoEvenFace;
