@@ -1,3 +1,6 @@
+/** Problems the message spells out; `problems` holds all of them. */
+const SPELT_OUT = 20;
+
 /**
  * Bad input, with every problem found and not just the first.
  *
@@ -17,7 +20,8 @@ export class InstanceError extends Error {
     super(
       problems.length === 1
         ? problems[0]
-        : `${problems.length} problems:\n- ${problems.join("\n- ")}`,
+        : `${problems.length} problems:\n- ${problems.slice(0, SPELT_OUT).join("\n- ")}` +
+          (problems.length > SPELT_OUT ? `\n… and ${problems.length - SPELT_OUT} more` : ""),
     );
     this.problems = problems;
   }
