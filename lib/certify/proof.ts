@@ -1,0 +1,25 @@
+/** Sends a proof to the checker of its rule. */
+import { casesBound } from "./cases.ts";
+import type { Proof } from "./certificate.ts";
+import { packingBound } from "./packing.ts";
+import type { Play } from "./play.ts";
+import { Rejected } from "./rejected.ts";
+
+/**
+ * The bound a proof proves for the vertices in play.
+ *
+ * @param play the graph, its weights and the vertices in play
+ * @param proof any proof
+ * @returns an upper bound for the weight of a stable set inside `play.vertices`, in scaled units
+ * @throws {Rejected} naming the first thing that is wrong
+ */
+export function provenBound(play: Play, proof: Proof): bigint {
+  switch (proof?.rule) {
+    case "packing":
+      return packingBound(play, proof);
+    case "cases":
+      return casesBound(play, proof);
+    default:
+      throw new Rejected(`unknown rule ${JSON.stringify((proof as { rule?: unknown })?.rule)}`);
+  }
+}
