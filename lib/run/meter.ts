@@ -112,13 +112,27 @@ export class Meter {
    * work and not time, so the same input takes the same path on every machine.
    */
   within(units: number): Meter {
+    const part = this.#derive();
+    part.#workLeft = units;
+    return part;
+  }
+
+  /** A meter for a part of the run whose reports are rewritten before they are passed on. */
+  reporting(rewrite: (progress: Progress) => Progress): Meter {
+    const part = this.#derive();
+    const onProgress = this.#onProgress;
+    part.#onProgress = onProgress && ((progress) => onProgress(rewrite(progress)));
+    return part;
+  }
+
+  /** Same clock, limits and callbacks; its work counts here too. */
+  #derive(): Meter {
     const part = new Meter({ seed: this.seed }, undefined, this.#clock);
     part.#startedAt = this.#startedAt;
     part.#deadline = this.#deadline;
     part.#signal = this.#signal;
     part.#flag = this.#flag;
     part.#onProgress = this.#onProgress;
-    part.#workLeft = units;
     part.#parent = this;
     return part;
   }
