@@ -1,0 +1,19 @@
+/** Names the renderer of each kind of result; `lib/mod.ts` calls this once when it is loaded. */
+import type { Solution } from "../certify/solution.ts";
+import type { Verdict } from "../certify/verdict.ts";
+import type { Instance } from "../instance/instance.ts";
+import { registerRenderer } from "../run/displayable.ts";
+import { renderInstance } from "./instance.ts";
+import { type Picture, renderPicture } from "./picture.ts";
+import { renderSolution } from "./solution.ts";
+import { renderVerdict } from "./verdict.ts";
+import { renderWeightChart, type WeightChart } from "./weight-chart.ts";
+
+/** Fills the registry of renderers. Calling it twice does no harm. */
+export function registerRenderers(): void {
+  registerRenderer<Instance>("instance", renderInstance);
+  registerRenderer<Solution>("solution", renderSolution);
+  registerRenderer<Verdict>("verdict", renderVerdict);
+  registerRenderer<Picture>("picture", renderPicture);
+  registerRenderer<WeightChart>("weight-chart", renderWeightChart);
+}
