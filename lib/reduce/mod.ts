@@ -1,0 +1,15 @@
+/**
+ * Turns a graph with weights into a smaller one whose heaviest stable set gives the whole's.
+ *
+ * @example
+ * ```ts
+ * import { graphFromPairs } from "../graph/mod.ts";
+ * import { Meter } from "../run/mod.ts";
+ * import { halfIntegralKernel } from "./mod.ts";
+ * const star = graphFromPairs(4, [[0, 1], [0, 2], [0, 3]]);
+ * const { value } = halfIntegralKernel(star, Float64Array.of(2, 1, 1, 1), new Meter());
+ * console.assert(value.join() === "0,2,2,2"); // the three leaves, without any search
+ * ```
+ * @module
+ */
+export { type HalfIntegralKernel, halfIntegralKernel } from "./kernel.ts";
