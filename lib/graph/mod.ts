@@ -20,3 +20,4 @@ export {
 } from "./graph.ts";
 export { type Components, components, componentSubgraphs } from "./components.ts";
 export { type TwoColouring, twoColouring } from "./two-colouring.ts";
+export { type FlowNetwork, type MaxFlow, maxFlow } from "./max-flow.ts";
