@@ -1,0 +1,47 @@
+/**
+ * evenface: the conflict-free choice of greatest worth, with a proof. This is the public face; in a
+ * notebook's kernel, loading it sets the display hooks and the Stop button up.
+ *
+ * @example
+ * ```ts
+ * import { check, Instance, solve } from "./mod.ts";
+ * const instance = Instance.from({
+ *   items: [{ id: "a", weight: 3 }, { id: "b", weight: 2 }, { id: "c", weight: 2 }],
+ *   conflicts: [["a", "b"], ["a", "c"]],
+ * });
+ * const solution = await solve(instance, { workers: 0 });
+ * console.assert(solution.status === "optimal" && solution.weight === 4);
+ * console.assert(check(instance, solution).valid);
+ * ```
+ * @module
+ */
+import type { Solution } from "./certify/solution.ts";
+import { registerRenderers } from "./display/register.ts";
+import type { Instance } from "./instance/instance.ts";
+import { enterNotebook } from "./notebook/enter.ts";
+import { withKernelRun } from "./notebook/kernel-run.ts";
+import { solve as solveHere, type SolveOptions } from "./solve/solve.ts";
+
+registerRenderers();
+enterNotebook();
+
+export { check } from "./certify/check.ts";
+export { fromJson, toJson } from "./certify/json.ts";
+export { Solution } from "./certify/solution.ts";
+export { Verdict } from "./certify/verdict.ts";
+export { show } from "./notebook/show.ts";
+export { InstanceError } from "./run/errors.ts";
+
+/**
+ * Finds the conflict-free choice of greatest worth and proves that nothing better exists. In a
+ * notebook the Stop button ends it and a line shows its progress. See `solve/solve.ts`.
+ *
+ * @param instance items and conflicts
+ * @param options what must be chosen or left, limits, progress
+ * @returns the solution; with a limit or a stop, the best so far with an honest bound
+ * @throws {InstanceError} when `choose` or `leave` names unknown ids, or one id in both
+ * @throws {RangeError} for run options that mean nothing
+ */
+export function solve(instance: Instance, options: SolveOptions = {}): Promise<Solution> {
+  return withKernelRun("solve", options, (watched) => solveHere(instance, watched));
+}
