@@ -1,32 +1,24 @@
 /**
- * From rows and pairs to arrays, with every problem found on the way. O(n + m) time beside hashing
- * the ids.
+ * From rows and pairs to the fields of an instance, with every problem found on the way. O(n + m)
+ * time beside hashing the ids.
  */
-import { type Graph, graphFromEdges } from "../graph/graph.ts";
+import type { Graph } from "../graph/graph.ts";
 import { InstanceError } from "../run/errors.ts";
-import { type Conflict, idText, type InstanceInput, type Row, shown } from "./item.ts";
-import { sortPairs } from "./pairs.ts";
+import {
+  type Ends,
+  mergeConflicts,
+  type Merged,
+  type Places,
+  readConflicts,
+  type Reasons,
+} from "./conflicts.ts";
+import { idText, type InstanceInput, type Row, shown } from "./item.ts";
 import { scaleWeights } from "./weights.ts";
-
-/** Names the rows of a source in messages: "items row 3", "offers.csv line 4". */
-export interface Places {
-  item(i: number): string;
-  conflict(i: number): string;
-}
 
 const ROWS: Places = {
   item: (i) => `items row ${i + 1}`,
   conflict: (i) => `conflicts row ${i + 1}`,
 };
-
-/** The reasons of all edges, each text kept once. */
-export interface Reasons {
-  /** Length m + 1: the reasons of edge e stand at start[e] … start[e+1]-1. */
-  readonly start: Int32Array;
-  /** Places in `texts`; distinct within one edge, in order of the rows. */
-  readonly index: Int32Array;
-  readonly texts: readonly string[];
-}
 
 /** The fields of an instance, all checked. */
 export interface InstanceParts {
@@ -43,25 +35,36 @@ export interface InstanceParts {
   readonly notes: readonly string[];
 }
 
+/** Most items: what one `Map` of ids holds. */
+export const MOST_ITEMS = 2 ** 24;
+
 /** Most examples a note shows; it says how many more there are. */
 const EXAMPLES = 10;
+
+/** What a reader knows about the rows it hands over. */
+export interface Origin {
+  /** Names rows in messages. */
+  readonly places?: Places;
+  /** Problems found before, to be reported with the rest. */
+  readonly problems?: readonly string[];
+  /** Items are missing because of those problems: an unknown id is then no problem of its own. */
+  readonly partial?: boolean;
+  /** Notes to begin with. */
+  readonly notes?: readonly string[];
+}
 
 /**
  * Checks and assembles.
  *
  * @param input rows and conflicts
- * @param places names rows in messages
- * @param known problems found before, to be reported with the rest
+ * @param origin where they come from
  * @throws {InstanceError} with all problems
  */
-export function assemble(
-  input: InstanceInput,
-  places: Places = ROWS,
-  known: readonly string[] = [],
-): InstanceParts {
-  const problems = [...known];
+export function assemble(input: InstanceInput, origin: Origin = {}): InstanceParts {
+  const { places = ROWS, partial = false } = origin;
+  const problems = [...origin.problems ?? []];
   const columns = { id: input.id ?? "id", weight: input.weight ?? "weight" };
-  const rows = rowsOf(input.items, places, problems);
+  const rows = rowsOf(input.items, places, partial, problems);
   const absent = absentColumns(rows, columns, problems);
 
   const ids: string[] = new Array(rows.length);
@@ -90,16 +93,12 @@ export function assemble(
     : scaleWeights(rows.map((row) => row[columns.weight]), named);
   for (const problem of scaled.problems) problems.push(problem);
 
-  const ends = endsOf(
-    input.conflicts,
-    absent.has(columns.id) ? undefined : index,
-    places,
-    problems,
-  );
+  const known = partial || absent.has(columns.id) ? undefined : index;
+  const ends = readConflicts(input.conflicts, known, places, problems);
   if (problems.length > 0) throw new InstanceError(problems);
 
   const merged = mergeConflicts(rows.length, ends);
-  const notes: string[] = [];
+  const notes = [...origin.notes ?? []];
   noteDuplicates(merged, ids, ends, places, notes);
   noteWorthless(scaled.weights, named, notes);
   return {
@@ -117,12 +116,23 @@ export function assemble(
   };
 }
 
-function rowsOf(items: readonly object[], places: Places, problems: string[]): Row[] {
+function rowsOf(
+  items: readonly object[],
+  places: Places,
+  partial: boolean,
+  problems: string[],
+): Row[] {
   if (!Array.isArray(items)) {
     problems.push(`items: expected an array of rows, got ${shown(items)}`);
     return [];
   }
-  if (items.length === 0) problems.push("items: the table is empty; expected at least one row");
+  if (items.length === 0 && !partial) {
+    problems.push("items: the table is empty; expected at least one row");
+  }
+  if (items.length > MOST_ITEMS) {
+    problems.push(`items: expected at most ${MOST_ITEMS} rows, got ${items.length}`);
+    return [];
+  }
   const rows: Row[] = [];
   for (let i = 0; i < items.length; i++) {
     const row: unknown = items[i];
@@ -154,115 +164,6 @@ function absentColumns(
     );
   }
   return absent;
-}
-
-/** Conflicts as indices, in order of the rows. */
-interface Ends {
-  /** Length k: the lesser index of each conflict. */
-  readonly low: Int32Array;
-  /** Length k: the greater one. */
-  readonly high: Int32Array;
-  /** Length k: place in `texts`, -1 without a reason. */
-  readonly reason: Int32Array;
-  readonly texts: readonly string[];
-}
-
-function endsOf(
-  conflicts: readonly Conflict[],
-  index: ReadonlyMap<string, number> | undefined,
-  places: Places,
-  problems: string[],
-): Ends {
-  const list: readonly unknown[] = Array.isArray(conflicts) ? conflicts : [];
-  if (!Array.isArray(conflicts)) {
-    problems.push(`conflicts: expected an array of pairs of ids, got ${shown(conflicts)}`);
-  }
-  const k = list.length;
-  const low = new Int32Array(k), high = new Int32Array(k), reason = new Int32Array(k).fill(-1);
-  const texts: string[] = [];
-  const placeOf = new Map<string, number>();
-  for (let c = 0; c < k; c++) {
-    const one = list[c];
-    const pair: unknown = Array.isArray(one) ? one : (one as { between?: unknown } | null)?.between;
-    if (!Array.isArray(pair) || pair.length !== 2) {
-      problems.push(`${places.conflict(c)}: expected two ids, got ${shown(one)}`);
-      continue;
-    }
-    const [a, b] = [idText(pair[0]), idText(pair[1])];
-    if (a === undefined || b === undefined) {
-      problems.push(`${places.conflict(c)}: expected two ids, got ${shown(pair)}`);
-      continue;
-    }
-    const u = index?.get(a), v = index?.get(b);
-    if (index !== undefined && u === undefined) {
-      problems.push(`${places.conflict(c)}: unknown id ${shown(a)}; expected the id of an item`);
-    }
-    if (index !== undefined && v === undefined && a !== b) {
-      problems.push(`${places.conflict(c)}: unknown id ${shown(b)}; expected the id of an item`);
-    }
-    if (a === b) {
-      problems.push(`${places.conflict(c)}: item ${shown(a)} in conflict with itself`);
-      continue;
-    }
-    if (u === undefined || v === undefined) continue;
-    low[c] = Math.min(u, v);
-    high[c] = Math.max(u, v);
-    const text: unknown = Array.isArray(one) ? undefined : (one as { reason?: unknown }).reason;
-    if (text === undefined || text === null || text === "") continue;
-    const said = String(text);
-    let at = placeOf.get(said);
-    if (at === undefined) {
-      at = texts.push(said) - 1;
-      placeOf.set(said, at);
-    }
-    reason[c] = at;
-  }
-  return { low, high, reason, texts };
-}
-
-/** The simple graph, edges by (lesser, greater) index, with what was merged. */
-interface Merged {
-  readonly graph: Graph;
-  readonly reasons: Reasons;
-  /** Length k: conflicts by edge, in order of the rows within one. */
-  readonly order: Int32Array;
-  /** Length m + 1: the conflicts of edge e stand at first[e] … first[e+1]-1 of `order`. */
-  readonly first: Int32Array;
-}
-
-function mergeConflicts(n: number, ends: Ends): Merged {
-  const { low, high, reason, texts } = ends;
-  const order = sortPairs(n, low, high);
-  const k = order.length;
-  const first = new Int32Array(k + 1);
-  let m = 0;
-  for (let at = 0; at < k; at++) {
-    const c = order[at], before = order[at - 1];
-    if (at === 0 || low[c] !== low[before] || high[c] !== high[before]) first[m++] = at;
-  }
-  first[m] = k;
-  const tails = new Int32Array(m), heads = new Int32Array(m), start = new Int32Array(m + 1);
-  const index = new Int32Array(k);
-  let end = 0;
-  for (let e = 0; e < m; e++) {
-    tails[e] = low[order[first[e]]];
-    heads[e] = high[order[first[e]]];
-    const seen = first[e + 1] - first[e] > 8 ? new Set<number>() : undefined;
-    for (let at = first[e]; at < first[e + 1]; at++) {
-      const r = reason[order[at]];
-      if (r < 0) continue;
-      if (seen === undefined ? index.subarray(start[e], end).includes(r) : seen.has(r)) continue;
-      seen?.add(r);
-      index[end++] = r;
-    }
-    start[e + 1] = end;
-  }
-  return {
-    graph: graphFromEdges(n, tails, heads),
-    reasons: { start, index: index.slice(0, end), texts },
-    order,
-    first: first.slice(0, m + 1),
-  };
 }
 
 function noteDuplicates(

@@ -9,10 +9,10 @@ export type Item = { id: string; weight: Weight } & Record<string, unknown>;
 /** A row as any table library gives it. */
 export type Row = Readonly<Record<string, unknown>>;
 
-/** Two items that cannot both be chosen, with the reason later explanations quote. */
+/** Two items that cannot both be chosen, with the reasons later explanations quote. */
 export type Conflict = readonly [string, string] | {
   readonly between: readonly [string, string];
-  readonly reason?: string;
+  readonly reason?: string | readonly string[];
 };
 
 /** What `Instance.from` takes. */

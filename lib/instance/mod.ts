@@ -17,3 +17,11 @@ export { type EdgeAttributes, Instance, type NodeAttributes } from "./instance.t
 export { type Conflict, type InstanceInput, type Item, type Row, type Weight } from "./item.ts";
 export { type CanonicalOrder } from "./fingerprint.ts";
 export { formatScaled } from "./weights.ts";
+export { readRows, readTables, type Tables, type TableSource } from "./tables.ts";
+export { toCsv } from "./csv.ts";
+export { readDimacs, toDimacs } from "./dimacs.ts";
+export { type GraphOptions, readGraph } from "./graphology.ts";
+export { type Column, type RuleOptions } from "./rule.ts";
+export { overlapConflicts, type OverlapOptions } from "./overlap.ts";
+export { distanceConflicts, type DistanceOptions, EARTH_RADIUS_METRES } from "./distance.ts";
+export { sharedConflicts, type SharedOptions } from "./shared.ts";

@@ -80,18 +80,54 @@ export function formatScaled(value: number, scale: number): string {
   return `${value < 0 ? "-" : ""}${whole}${rest === "" ? "" : `.${rest}`}`;
 }
 
+/** Length 23: the powers of ten that a number holds exactly. */
+const POWERS = Float64Array.from({ length: MOST_DECIMALS + 1 }, (_, k) => Number(`1e${k}`));
+
 /** 10^k, exact for k <= 22; larger powers only ever meet the refusal. */
 function power(k: number): number {
-  return Number(`1e${k}`);
+  return k <= MOST_DECIMALS ? POWERS[k] : Number(`1e${k}`);
 }
 
 function readDecimal(value: unknown): Decimal | undefined {
   if (typeof value === "number") {
     if (Number.isSafeInteger(value)) return { mantissa: value, exponent: 0 };
-    return Number.isFinite(value) ? parseDecimal(String(value)) : undefined;
+    if (!Number.isFinite(value)) return undefined;
+    return shortDecimal(value) ?? parseDecimal(String(value));
   }
-  if (typeof value === "string") return parseDecimal(value);
+  if (typeof value === "string") return plainDecimal(value) ?? parseDecimal(value);
   return typeof value === "bigint" ? parseDecimal(String(value)) : undefined;
+}
+
+/**
+ * The shortest decimal form of a number where it has few decimals, without going through text: at
+ * most one decimal of up to 15 digits rounds to a given number, so the first found is the shortest.
+ */
+function shortDecimal(value: number): Decimal | undefined {
+  for (let k = 1; k <= 6; k++) {
+    const mantissa = Math.round(value * POWERS[k]);
+    if (!(Math.abs(mantissa) < 1e15)) return undefined;
+    if (mantissa / POWERS[k] === value) return { mantissa, exponent: -k };
+  }
+  return undefined;
+}
+
+/** Digits with at most one point among them, up to 15 digits; other forms are left to the pattern. */
+function plainDecimal(text: string): Decimal | undefined {
+  if (text.length === 0 || text.length > 16) return undefined;
+  let mantissa = 0, point = -1;
+  for (let at = 0; at < text.length; at++) {
+    const digit = text.charCodeAt(at) - 48;
+    if (digit >= 0 && digit <= 9) mantissa = mantissa * 10 + digit;
+    else if (digit === -2 && point < 0 && at > 0) point = at;
+    else return undefined;
+  }
+  if (mantissa > 1e15) return undefined;
+  let exponent = point < 0 ? 0 : point + 1 - text.length;
+  while (exponent < 0 && mantissa % 10 === 0) {
+    mantissa /= 10;
+    exponent++;
+  }
+  return { mantissa, exponent };
 }
 
 function parseDecimal(text: string): Decimal | undefined {

@@ -1,0 +1,118 @@
+/** Conflicts between uses of one resource that overlap in time, by a sweep over the starts. */
+import { InstanceError } from "../run/errors.ts";
+import { type Conflict, type Row, shown } from "./item.ts";
+import { type Moment, type MomentScale, readMoment, SCALE_NAMES, stretch } from "./moment.ts";
+import { cell, type Column, columnName, ruleConflict, type RuleOptions, ruleRows } from "./rule.ts";
+
+/** What `overlapConflicts` takes beside the rows. */
+export interface OverlapOptions extends RuleOptions {
+  /** Column of the start: a number, a Date, an ISO date or a time of day ("18:00"). */
+  readonly start: Column;
+  /** Column of the end, not part of the interval; not before the start. */
+  readonly end: Column;
+  /** Column of what is used; rows with another value never conflict. Unset: one for all. */
+  readonly resource?: Column;
+  /**
+   * Least pause between two uses, 0 if unset: in the unit of the numbers, and in milliseconds for
+   * dates and times of day.
+   */
+  readonly gap?: number;
+}
+
+/**
+ * One conflict for each two rows with the same resource of which each begins before the other's end
+ * plus the gap. Intervals are half-open: with no gap, one that ends at 19:00 leaves 19:00 free.
+ *
+ * @param rows row objects
+ * @param options columns and gap
+ * @returns conflicts with reasons such as "share pitch 7 between 18:00 and 19:00"
+ * @throws {InstanceError} listing all problems: a moment that is missing or cannot be read, an end
+ *   before its start, numbers mixed with dates. O(n log n + conflicts) time.
+ */
+export function overlapConflicts(rows: readonly object[], options: OverlapOptions): Conflict[] {
+  const { start, end, resource, gap = 0 } = options;
+  const problems: string[] = [];
+  if (!(Number.isFinite(gap) && gap >= 0)) {
+    problems.push(`gap: expected a number >= 0, got ${shown(gap)}`);
+  }
+  const { list, ids, absent } = ruleRows(rows, options, [start, end, resource], problems);
+  const starts: Moment[] = [], ends: Moment[] = [];
+  let scale: MomentScale | undefined, scaleRow = 0;
+  const moment = (row: Row, i: number, column: Column, what: string): Moment => {
+    const value = cell(row, column);
+    const read = readMoment(value);
+    const name = columnName(column, what);
+    if (absent.has(name) && typeof column === "string") return { at: 0, scale: "number", text: "" };
+    if (read === undefined) {
+      problems.push(
+        `row ${i + 1} (${ids[i]}): ${name} ${shown(value)}; expected a number, a date or a time`,
+      );
+      return { at: NaN, scale: "number", text: "" };
+    }
+    if (scale === undefined) [scale, scaleRow] = [read.scale, i];
+    if (read.scale !== scale) {
+      problems.push(
+        `row ${i + 1} (${ids[i]}): ${name} ${shown(value)} is ${SCALE_NAMES[read.scale]}; ` +
+          `expected ${SCALE_NAMES[scale]}, as in row ${scaleRow + 1}`,
+      );
+      return { at: NaN, scale, text: "" };
+    }
+    return read;
+  };
+  for (let i = 0; i < list.length; i++) {
+    starts.push(moment(list[i], i, start, "start"));
+    ends.push(moment(list[i], i, end, "end"));
+    if (ends[i].at < starts[i].at) {
+      problems.push(
+        `row ${i + 1} (${ids[i]}): ends at ${ends[i].text}, before it starts at ` +
+          `${starts[i].text}; expected an end not before the start`,
+      );
+    }
+  }
+  if (problems.length > 0) throw new InstanceError(problems);
+
+  const used = list.map((row) => resource === undefined ? "" : resourceKey(cell(row, resource)));
+  const order = Array.from(list.keys()).sort((i, j) =>
+    starts[i].at - starts[j].at || ends[i].at - ends[j].at || i - j
+  );
+  const conflicts: Conflict[] = [];
+  /** Rows of each resource that were in use when the sweep last met it. */
+  const open = new Map<string, number[]>();
+  for (const j of order) {
+    const rivals = open.get(used[j]);
+    if (rivals === undefined) {
+      open.set(used[j], [j]);
+      continue;
+    }
+    let kept = 0;
+    for (const i of rivals) {
+      if (starts[j].at >= ends[i].at + gap) continue;
+      rivals[kept++] = i;
+      if (starts[i].at >= ends[j].at + gap) continue;
+      conflicts.push(ruleConflict(list, ids, i, j, options, () => wording(i, j)));
+    }
+    rivals.length = kept;
+    rivals.push(j);
+  }
+  return conflicts;
+
+  function wording(i: number, j: number): string {
+    const earlier = ends[i].at <= ends[j].at ? ends[i] : ends[j];
+    const from = starts[j].text, to = earlier.text;
+    const what = resource === undefined
+      ? ""
+      : ` ${typeof resource === "string" ? `${resource} ` : ""}${String(cell(list[i], resource))}`;
+    if (starts[j].at < earlier.at) {
+      return what === ""
+        ? `overlap between ${from} and ${to}`
+        : `share${what} between ${from} and ${to}`;
+    }
+    return `less than ${stretch(gap, scale ?? "number")} between ${to} and ${from}` +
+      (what === "" ? "" : ` on${what}`);
+  }
+}
+
+/** Numbers and texts that look alike are the same resource. */
+function resourceKey(value: unknown): string {
+  return value instanceof Date ? value.toISOString() : String(value ?? "");
+}
