@@ -8,16 +8,25 @@ import { escapeHtml } from "./html.ts";
 
 /** A picture with a title; `svg` is a complete SVG document. */
 export class Picture extends Displayable {
+  /** Names the renderer. */
   readonly kind = "picture";
 
   /**
+   * Wraps a finished picture.
+   *
    * @param svg a complete SVG document
    * @param title one or two sentences that say what is to be seen
    */
-  constructor(readonly svg: string, readonly title: string) {
+  constructor(
+    /** A complete SVG document. */
+    readonly svg: string,
+    /** What is to be seen, in words. */
+    readonly title: string,
+  ) {
     super();
   }
 
+  /** The words alone. */
   override toString(): string {
     return this.title;
   }

@@ -12,12 +12,16 @@ import { counted, numberText } from "./text.ts";
 
 /** A chart that JupyterLab shows with tooltips and everything else as a picture. */
 export class WeightChart extends Displayable {
+  /** Names the renderer. */
   readonly kind = "weight-chart";
   /** One bar for each range of worth, in ascending order; all ranges are equally wide. */
   readonly bars: readonly Bar[];
+  /** The figures in one sentence. */
   readonly title: string;
+  /** Unit of the worth; may be empty. */
   readonly unit: string;
 
+  /** Takes the bars as they are; `chartWeights` counts them. */
   constructor(bars: readonly Bar[], title: string, unit: string) {
     super();
     this.bars = bars;
@@ -25,6 +29,7 @@ export class WeightChart extends Displayable {
     this.unit = unit;
   }
 
+  /** The figures in one sentence. */
   override toString(): string {
     return this.title;
   }
@@ -32,9 +37,13 @@ export class WeightChart extends Displayable {
 
 /** How many items have a worth from `from` up to `to`. */
 export interface Bar {
+  /** Least worth in the range. */
   readonly from: number;
+  /** Worth at which the next range begins. */
   readonly to: number;
+  /** Number of chosen items. */
   readonly chosen: number;
+  /** Number of items that are not chosen. */
   readonly refused: number;
 }
 

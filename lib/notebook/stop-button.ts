@@ -47,7 +47,13 @@ export async function withStopButton<R>(
 ): Promise<R> {
   const signals = (globalThis as unknown as { Deno: Signals }).Deno;
   const controller = new AbortController();
-  const abort = () => controller.abort();
+  let aborting = false;
+  const abort = () => {
+    // `abort` does nothing on a signal that says it is aborted already, so the flag keeps quiet.
+    aborting = true;
+    controller.abort();
+    aborting = false;
+  };
   outer?.addEventListener("abort", abort);
   if (outer?.aborted) abort();
 
@@ -59,7 +65,9 @@ export async function withStopButton<R>(
   }
   const mine = pressed;
   Object.defineProperty(controller.signal, "aborted", {
-    get: () => Atomics.load(mine, 0) !== 0 || plainAborted.call(controller.signal),
+    get: () =>
+      plainAborted.call(controller.signal) ||
+      (!aborting && (Atomics.load(mine, 0) !== 0 || outer?.aborted === true)),
   });
   signals.addSignalListener("SIGINT", abort);
   try {
