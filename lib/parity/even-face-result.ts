@@ -18,29 +18,27 @@ export interface EvenFaceEmbedding {
   readonly coverNext: Int32Array;
 }
 
-/** Why there is no even-face embedding, or why none was found. */
+/** Why there is no even-face embedding. Every reason is a proof. */
 export type NoEvenFaceReason =
   /** H is not connected. */
   | "not connected"
   /** H is bipartite. */
   | "bipartite"
+  /** Two blocks hold odd cycles, and no vertex meets all of them: two odd cycles are disjoint. */
+  | "odd cycles in separate blocks"
   /** The cover is not planar; `kuratowski` is a subdivision in it. */
   | "cover not planar"
-  /** The cover is planar and the swap of the sheets keeps orientation. */
-  | "orientation kept"
   /**
-   * The cover is planar, its embeddings are not unique, and the one at hand is not reversed by the
-   * swap. Happens only where the odd cycle transversal has at most two vertices.
+   * The cover is planar, no vertex meets all odd cycles, and swapping the sheets keeps orientation
+   * on the 3-connected piece in the middle, whose embedding is unique up to reflection.
    */
-  | "condition not met";
+  | "orientation kept";
 
-/** The answer "no". */
+/** The answer "no", always proved. */
 export interface NoEvenFace {
   readonly kind: "no";
   readonly reason: NoEvenFaceReason;
-  /** Whether it is proved that H has no even-face embedding; otherwise none was found. */
-  readonly conclusive: boolean;
-  /** A Kuratowski subdivision in the double cover, when the reason is "cover not planar". */
+  /** A Kuratowski subdivision in the double cover, when the cover is not planar and it was asked. */
   readonly kuratowski?: Kuratowski;
 }
 
