@@ -91,7 +91,7 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
     ? ""
     : ` with ${choose.length} items required and ${leave.length} ruled out`;
   return `no conflict-free choice is worth more than ${data.weight}${asked}; ` +
-    `${n} items were accounted for, in ${certificate.parts.length} parts`;
+    `${n} items accounted for (parts: ${certificate.parts.length})`;
 
   function checkChoice(): { chosen: Uint8Array; weight: number } {
     const chosen = new Uint8Array(n);

@@ -5,6 +5,7 @@
 import type { CertificatePart, Proof } from "../certify/certificate.ts";
 import { componentSubgraphs } from "../graph/components.ts";
 import type { Graph } from "../graph/graph.ts";
+import { twoColouring } from "../graph/two-colouring.ts";
 import { halfIntegralKernel } from "../reduce/kernel.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
 import type { EngineName, Piece, Solved } from "./engine.ts";
@@ -56,6 +57,7 @@ export async function dispatch(problem: Problem, meter: Meter): Promise<Outcome>
   const started = meter.elapsedMs;
   const chosen = new Uint8Array(graph.n);
   if (graph.n === 0) return { chosen, parts: [] };
+  if (twoColouring(graph).side !== undefined) return await whole(problem, meter);
   meter.report("half-integral kernel", { done: 0, total: 1 }, true);
   let kernel;
   try {
@@ -110,6 +112,14 @@ export async function dispatch(problem: Problem, meter: Meter): Promise<Outcome>
   }
   meter.report("done", { done: pieces.length, total: pieces.length, lower, upper }, true);
   return { chosen, parts };
+}
+
+/** A bipartite graph needs no kernel: its engine solves it in one go. */
+async function whole(problem: Problem, meter: Meter): Promise<Outcome> {
+  const started = meter.elapsedMs;
+  const { engine, why, solved } = await solvePiece(problem, problem.engine, meter);
+  const part = { ...partOf(problem, solved), engine, why, elapsedMs: meter.elapsedMs - started };
+  return { chosen: solved.chosen, parts: [part] };
 }
 
 function partOf(piece: Piece, solved: Solved) {

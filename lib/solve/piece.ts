@@ -4,21 +4,14 @@
  * of work, then with the help of a floating-point solver's solutions, then until it is done.
  */
 import { Interrupted, type Meter } from "../run/meter.ts";
-import { branch } from "./branch.ts";
 import type { Declined, Engine, EngineName, Piece, Solved } from "./engine.ts";
 import { greedyPacking, greedyStableSet } from "./greedy.ts";
-import { mip } from "./mip.ts";
-import { bipartite } from "./bipartite.ts";
-import { transversal } from "./transversal.ts";
+import { solveBipartite } from "./bipartite.ts";
 
 /** The special engines, in the order in which they are asked. */
 const SPECIAL: readonly (readonly [EngineName, Engine])[] = [
-  ["bipartite", bipartite],
-  ["transversal", transversal],
+  ["bipartite", solveBipartite],
 ];
-
-/** Work that branch and bound may do before the floating-point solver is asked for a solution. */
-const FIRST_BRANCH_WORK = 2e9;
 
 export interface PieceResult {
   readonly engine: string;
@@ -49,17 +42,6 @@ export async function solvePiece(
     if (answer.status !== "declined") return { engine: name, why, solved: answer };
     why.push(`${name} declined: ${answer.reason}`);
   }
-  if (meter.interruption === undefined) {
-    if (only === undefined || only === "branch") {
-      return await byBranching(piece, meter, why, only === undefined);
-    }
-    if (only === "mip") {
-      const answer = await asked(mip, piece, meter);
-      if (answer !== undefined && answer.status !== "declined") {
-        return { engine: "mip", why, solved: answer };
-      }
-    }
-  }
   if (meter.interruption !== undefined) why.push(`the run ended (${meter.interruption})`);
   return { engine: "greedy", why, solved: greedily(piece) };
 }
@@ -76,44 +58,6 @@ async function asked(
     if (error instanceof Interrupted) return undefined;
     throw error;
   }
-}
-
-async function byBranching(
-  piece: Piece,
-  meter: Meter,
-  why: string[],
-  withHelp: boolean,
-): Promise<PieceResult> {
-  const first = branch(piece, withHelp ? meter.within(FIRST_BRANCH_WORK) : meter);
-  if (first.status === "optimal" || !withHelp || meter.interruption !== undefined) {
-    return { engine: "branch", why, solved: first };
-  }
-  why.push("branch and bound did not finish within its first budget of work");
-  const helped = await asked(mip, piece, meter);
-  if (helped === undefined || helped.status === "declined") {
-    if (helped !== undefined) why.push(`mip declined: ${helped.reason}`);
-    return { engine: "branch", why, solved: first };
-  }
-  const start = helped.weight > first.weight ? helped : first;
-  const bound = Math.min(first.upperBound, helped.upperBound);
-  if (meter.interruption !== undefined) {
-    return {
-      engine: start === helped ? "mip" : "branch",
-      why,
-      solved: { ...start, upperBound: bound, floatingBound: helped.floatingBound },
-    };
-  }
-  const second = branch(piece, meter, { chosen: start.chosen, weight: start.weight });
-  if (second.status === "optimal") return { engine: "branch", why, solved: second };
-  return {
-    engine: "branch",
-    why,
-    solved: {
-      ...second,
-      upperBound: Math.min(bound, second.upperBound),
-      floatingBound: helped.floatingBound,
-    },
-  };
 }
 
 /** The greedy choice under the better of the half-integral bound and a greedy packing. */
