@@ -29,8 +29,14 @@ export { check } from "./certify/check.ts";
 export { fromJson, toJson } from "./certify/json.ts";
 export { Solution } from "./certify/solution.ts";
 export { Verdict } from "./certify/verdict.ts";
+export { report, type ReportOptions } from "./display/report.ts";
+export { saveReport } from "./display/save-report.ts";
+export { chartWeights } from "./display/weight-chart.ts";
+export * from "./instance/mod.ts";
 export { show } from "./notebook/show.ts";
 export { InstanceError } from "./run/errors.ts";
+export type { Progress, RunOptions } from "./run/options.ts";
+export type { SolveOptions } from "./solve/solve.ts";
 
 /**
  * Finds the conflict-free choice of greatest worth and proves that nothing better exists. In a
