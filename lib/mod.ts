@@ -17,6 +17,7 @@
  */
 import type { Solution } from "./certify/solution.ts";
 import { registerRenderers } from "./display/register.ts";
+import { withSource } from "./display/sources.ts";
 import type { Instance } from "./instance/instance.ts";
 import { enterNotebook } from "./notebook/enter.ts";
 import { withKernelRun } from "./notebook/kernel-run.ts";
@@ -49,5 +50,7 @@ export type { SolveOptions } from "./solve/solve.ts";
  * @throws {RangeError} for run options that mean nothing
  */
 export function solve(instance: Instance, options: SolveOptions = {}): Promise<Solution> {
-  return withKernelRun("solve", options, (watched) => solveHere(instance, watched));
+  return withKernelRun("solve", options, async (watched) => {
+    return withSource(await solveHere(instance, watched), instance);
+  });
 }

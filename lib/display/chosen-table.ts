@@ -35,10 +35,17 @@ export function itemTable(
     right: [false, true, ...names.map((name) => list.every((i) => isNumber(items[i][name])))],
     rows: list.map((i) => [
       instance.ids[i],
-      groupDigits(instance.decimal(weights[i])),
+      fixedText(instance, weights[i]),
       ...names.map((name) => cellText(items[i][name])),
     ]),
   };
+}
+
+/** A scaled worth with as many decimals as the instance has, so that columns line up. */
+export function fixedText(instance: Instance, scaled: number): string {
+  const [whole, rest = ""] = instance.decimal(scaled).split(".");
+  const decimals = Math.round(Math.log10(instance.scale));
+  return groupDigits(decimals === 0 ? whole : `${whole}.${rest.padEnd(decimals, "0")}`);
 }
 
 function isNumber(value: unknown): boolean {

@@ -3,13 +3,13 @@ import type { Solution } from "../certify/solution.ts";
 import type { Verdict } from "../certify/verdict.ts";
 import type { Instance } from "../instance/instance.ts";
 import { amountText, answerOf } from "./answer.ts";
-import { itemTable } from "./chosen-table.ts";
+import { fixedText, itemTable } from "./chosen-table.ts";
 import { type Refusal, refusals } from "./decisive.ts";
 import { escapeHtml } from "./html.ts";
 import { reasonsTable, worthInAll } from "./instance.ts";
 import { partsTable } from "./parts-table.ts";
 import { reportTable } from "./report-table.ts";
-import { counted, groupDigits, numberText, percentText, secondsText } from "./text.ts";
+import { counted, listText, numberText, percentText, secondsText } from "./text.ts";
 import { versions } from "./versions.ts";
 import { chartWeights, drawChart } from "./weight-chart.ts";
 
@@ -38,7 +38,7 @@ export function answerSection(solution: Solution, verdict: Verdict | undefined):
     ["proven bound", amountText(solution.upperBound, instance.unit)],
     ["gap", status === "optimal" ? "0%" : percentText(solution.gap)],
   ];
-  if (verdict !== undefined) {
+  if (verdict !== undefined && (verdict.valid || status === "optimal")) {
     figures.push(["independent check", verdict.valid ? "passed" : "failed"]);
   }
   return `<p class="headline">${escapeHtml(answer.headline)}</p>\n` +
@@ -52,52 +52,49 @@ export function answerSection(solution: Solution, verdict: Verdict | undefined):
           `<div><dt>${escapeHtml(name)}</dt><dd>${escapeHtml(value)}</dd></div>`
         ).join("")
       }</dl>\n`) +
-    (verdict === undefined ? "" : paragraph(`${sentence(verdict.reason)}`)) +
+    (verdict === undefined
+      ? ""
+      : paragraph(`The independent checker says: ${sentence(verdict.reason)}`)) +
     `<p>The answer is only as good as the list of conflicts: see <a href="#caution">caution</a>.` +
     `</p>\n`;
 }
 
-/** A text as a sentence: capital letter first, full stop last. */
+/** A text as the end of a sentence. */
 function sentence(text: string): string {
-  const whole = text.charAt(0).toUpperCase() + text.slice(1);
-  return /[.!?]$/.test(whole) ? whole : `${whole}.`;
+  return /[.!?]$/.test(text) ? text : `${text}.`;
 }
 
 /** Refused items of great worth and the conflicts that kept them out. */
 export function decisiveSection(instance: Instance, solution: Solution): string {
   const list = refusals(instance, solution.chosen, REFUSALS);
   if (list.length === 0) return "";
-  const amount = (scaled: number) => groupDigits(instance.decimal(scaled));
   const unit = instance.unit === "" ? "" : ` (${instance.unit})`;
   return paragraph(
     `The refused items of greatest worth, and the chosen items that each of them conflicts with. ` +
       `To choose one of them, all of its blockers have to go, and what depends on them changes too.`,
   ) + reportTable({
     caption: "Refused items of greatest worth",
-    columns: ["refused", `worth${unit}`, "blocked by", `worth of blockers${unit}`, "because"],
-    right: [false, true, false, true, false],
+    columns: ["refused", `worth${unit}`, "blocked by", `worth of blockers${unit}`],
+    right: [false, true, false, true],
     rows: list.map((refusal) => [
       refusal.id,
-      amount(refusal.weight),
-      refusal.blockers.map((b) => b.id).join(", "),
-      amount(refusal.blockers.reduce((sum, b) => sum + b.weight, 0)),
-      becauseText(refusal),
+      fixedText(instance, refusal.weight),
+      blockerLines(refusal),
+      fixedText(instance, refusal.blockers.reduce((sum, b) => sum + b.weight, 0)),
     ]),
   });
 }
 
-/** The reasons of a refusal, each once, with the blockers they speak of where they differ. */
-function becauseText({ blockers }: Refusal): string {
+/** The blockers of an item, those with the same reasons on one line. */
+function blockerLines({ blockers }: Refusal): string[] {
   const byReason = new Map<string, string[]>();
   for (const { id, reasons } of blockers) {
-    for (const reason of reasons.length > 0 ? reasons : ["no reason given"]) {
-      const ids = byReason.get(reason);
-      if (ids === undefined) byReason.set(reason, [id]);
-      else ids.push(id);
-    }
+    const reason = reasons.length > 0 ? reasons.join("; ") : "no reason given";
+    const ids = byReason.get(reason);
+    if (ids === undefined) byReason.set(reason, [id]);
+    else ids.push(id);
   }
-  if (byReason.size === 1) return [...byReason.keys()][0];
-  return [...byReason].map(([reason, ids]) => `${reason} (${ids.join(", ")})`).join("; ");
+  return [...byReason].map(([reason, ids]) => `${listText(ids)}: ${reason}`);
 }
 
 /** The chosen items, all of them, and how their worth compares with what was refused. */

@@ -30,6 +30,8 @@ th, td { padding: .3rem 1rem .3rem 0; text-align: left; vertical-align: top; }
 th { border-bottom: 1.5px solid var(--ink); font-weight: 600; }
 td { border-bottom: 1px solid var(--line); }
 .right { text-align: right; font-variant-numeric: tabular-nums; white-space: nowrap; }
+th.right { white-space: normal; vertical-align: bottom; } th { vertical-align: bottom; }
+.long { min-width: 15rem; }
 code, pre { font-family: ui-monospace, Menlo, Consolas, monospace; font-size: .88rem; }
 code { overflow-wrap: anywhere; }
 pre { background: var(--soft); border-radius: .5rem; padding: .7rem .9rem; overflow-x: auto; }

@@ -4,12 +4,15 @@
  */
 import { escapeHtml } from "./html.ts";
 
+/** A cell: text, or several lines of it. */
+export type Cell = string | readonly string[];
+
 /** A table of texts. */
 export interface Table {
   /** Heads of the columns. */
   readonly columns: readonly string[];
   /** Each row as long as `columns`. */
-  readonly rows: readonly (readonly string[])[];
+  readonly rows: readonly (readonly Cell[])[];
   /** Per column: whether it stands to the right. Unset: where every cell is a number. */
   readonly right?: readonly boolean[];
   /** One sentence that says what the table holds. */
@@ -22,8 +25,18 @@ const NUMBER = /^[-+]?[\d,]+(\.\d+)?(e[-+]?\d+)?%?$/;
 export function rightColumns(table: Table): boolean[] {
   return table.columns.map((_, c) =>
     table.right?.[c] ?? (table.rows.some((row) => row[c] !== "") &&
-      table.rows.every((row) => row[c] === "" || NUMBER.test(row[c])))
+      table.rows.every((row) => row[c] === "" || NUMBER.test(oneLine(row[c]))))
   );
+}
+
+/** A cell as one line of text. */
+export function oneLine(cell: Cell): string {
+  return typeof cell === "string" ? cell : cell.join("; ");
+}
+
+/** A cell as HTML, its lines below each other. */
+export function cellHtml(cell: Cell): string {
+  return typeof cell === "string" ? escapeHtml(cell) : cell.map(escapeHtml).join("<br>");
 }
 
 /** A table for a notebook. */
@@ -38,7 +51,7 @@ export function tableHtml(table: Table): string {
     `${escapeHtml(name)}</th>`
   ).join("");
   const body = table.rows.map((row) =>
-    `<tr>${row.map((text, c) => `<td style="${cell(c)}">${escapeHtml(text)}</td>`).join("")}</tr>`
+    `<tr>${row.map((one, c) => `<td style="${cell(c)}">${cellHtml(one)}</td>`).join("")}</tr>`
   ).join("");
   return `<table style="border-collapse:collapse;margin:.4em 0;font-size:92%">${
     captionHtml(table)
@@ -55,7 +68,7 @@ function captionHtml({ caption }: Table): string {
 /** A table as text, columns two blanks apart. */
 export function tableText(table: Table): string {
   const right = rightColumns(table);
-  const all = [table.columns, ...table.rows];
+  const all = [table.columns, ...table.rows.map((row) => row.map(oneLine))];
   const width = table.columns.map((_, c) => Math.max(...all.map((row) => [...row[c]].length)));
   const lines = all.map((row) =>
     row.map((text, c) => {

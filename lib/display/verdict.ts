@@ -8,7 +8,7 @@ export function renderVerdict(verdict: Verdict): MimeBundle {
   return {
     "text/html": lineHtml(
       `<strong style="border:1.5px solid currentColor;border-radius:4px;padding:.05em .45em;` +
-        `margin-right:.5em;white-space:nowrap">${verdict.valid ? "✓ Checked" : "✗ Rejected"}` +
+        `margin-right:.5em;white-space:nowrap">${verdict.valid ? "✓ Proved" : "✗ Not proved"}` +
         `</strong>${escapeHtml(verdict.reason)}`,
     ),
     "text/plain": verdict.toString(),

@@ -1,0 +1,61 @@
+"""Executes a notebook headless, again and again, each time with a fresh kernel.
+
+usage: execute.py NOTEBOOK RUNS OUT.ipynb
+
+Compares every run with the committed notebook: an output counts as lost where a cell has fewer
+outputs that show something than it has there. Prints one line of JSON; the last run is written to
+OUT.ipynb. The front end is nbclient, the one behind `jupyter nbconvert --execute`.
+"""
+
+import json
+import os
+import sys
+import time
+
+import nbformat
+from nbclient import NotebookClient
+
+
+def shown(cell):
+    """Outputs that show something: a display hook that has displayed by itself returns nothing."""
+    return [o for o in cell.get("outputs", [])
+            if o["output_type"] in ("stream", "error") or o.get("data")]
+
+
+def main(path, runs, out):
+    committed = nbformat.read(path, as_version=4)
+    folder = os.path.dirname(os.path.abspath(path))
+    lost = errors = stderr = 0
+    details = []
+    began = time.time()
+    for run in range(runs):
+        notebook = nbformat.read(path, as_version=4)
+        for cell in notebook.cells:
+            if cell.cell_type == "code":
+                cell.outputs, cell.execution_count = [], None
+        client = NotebookClient(notebook, timeout=300, kernel_name="evenface",
+                                allow_errors=True, resources={"metadata": {"path": folder}})
+        client.execute()
+        for number, (before, after) in enumerate(zip(committed.cells, notebook.cells)):
+            if before.cell_type != "code":
+                continue
+            missing = len(shown(before)) - len(shown(after))
+            if missing > 0:
+                lost += missing
+                details.append(f"run {run}, cell {number}: {missing} outputs lost")
+            for output in shown(after):
+                if output["output_type"] == "error":
+                    errors += 1
+                    details.append(f"run {run}, cell {number}: {output['ename']} {output['evalue']}")
+                elif output.get("name") == "stderr":
+                    stderr += 1
+                    details.append(f"run {run}, cell {number}: stderr {output['text'][:200]}")
+    nbformat.write(notebook, out)
+    expected = sum(len(shown(c)) for c in committed.cells if c.cell_type == "code")
+    print(json.dumps({"runs": runs, "outputs": expected * runs, "lost": lost, "errors": errors,
+                      "stderr": stderr, "seconds": round(time.time() - began, 1),
+                      "details": details[:20]}))
+
+
+if __name__ == "__main__":
+    main(sys.argv[1], int(sys.argv[2]), sys.argv[3])
