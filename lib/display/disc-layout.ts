@@ -5,12 +5,12 @@
  * twice on the rim, at opposite points; every other vertex stands once, inside.
  *
  * The inside is a barycentric drawing (Tutte, "How to draw a graph", Proc. London Math. Soc. 13,
- * 1963), with a helper point in each face so that faces do not collapse. Any positive weights give a
- * drawing without crossings; they are adjusted a few times to even out the lengths of edges.
- * O(n·m) for the cycle and O(m) for each relaxation sweep: meant for up to some thousands of vertices.
+ * 1963), with a helper point in each face so that faces do not collapse; then it is evened out.
+ * O(n·m) for the cycle and O(m) for each sweep: meant for up to some thousands of vertices.
  */
 import { dartEnd, dartStart, traceFaces } from "../graph/embedding.ts";
 import type { Graph } from "../graph/graph.ts";
+import { evenOut } from "./disc-even.ts";
 import type { EvenFaceEmbedding } from "../parity/even-face-result.ts";
 
 /** The disc. Vertices and edges are those of the double cover that lie in one half. */
@@ -26,11 +26,10 @@ export interface DiscLayout {
   readonly rim: readonly number[];
 }
 
-/** Rounds of adjusting weights, and relaxation sweeps in each. */
-const ROUNDS = 12;
-const SWEEPS = 400;
+/** Most sweeps of the relaxation. */
+const SWEEPS = 2000;
 /** Movement below which a relaxation has settled, in radii of the disc. */
-const SETTLED = 1e-5;
+const SETTLED = 1e-7;
 
 /**
  * Lays an even-face embedding out in a disc.
@@ -150,12 +149,36 @@ function relax(
     x[v] = Math.cos(angle);
     y[v] = Math.sin(angle);
   });
-  const springs = springsOf(cover, edges, faceOf, inside);
-  for (let round = 0; round < ROUNDS; round++) {
-    settle(springs, fixed, x, y);
-    if (round < ROUNDS - 1) adjust(springs, edges.length, x, y);
-  }
+  settle(springsOf(cover, edges, faceOf, inside), fixed, x, y);
+  evenOut({
+    x,
+    y,
+    fixed,
+    triangles: trianglesOf(cover, faceOf, inside),
+    edges: edges.map((e) => [cover.tails[e], cover.heads[e]]),
+  });
   return { x, y };
+}
+
+/** The stars of the inner faces. A face that meets a vertex twice is no star and is left out. */
+function trianglesOf(
+  cover: Graph,
+  faceOf: Int32Array,
+  inside: Uint8Array,
+): [number, number, number][] {
+  const simple = inside.slice();
+  const met = new Set<number>();
+  for (let d = 0; d < faceOf.length; d++) {
+    const corner = faceOf[d] * cover.n + dartStart(cover, d);
+    if (met.has(corner)) simple[faceOf[d]] = 0;
+    met.add(corner);
+  }
+  const triangles: [number, number, number][] = [];
+  for (let d = 0; d < faceOf.length; d++) {
+    if (simple[faceOf[d]] === 0) continue;
+    triangles.push([cover.n + faceOf[d], dartStart(cover, d), dartEnd(cover, d)]);
+  }
+  return triangles;
 }
 
 function springsOf(
@@ -221,26 +244,4 @@ function settle(springs: Springs, fixed: Uint8Array, x: Float64Array, y: Float64
     }
     if (moved < SETTLED) return;
   }
-}
-
-/** Pulls long edges tighter and lets short ones go, so that lengths grow more alike. */
-function adjust(
-  { from, to, strength }: Springs,
-  edgeCount: number,
-  x: Float64Array,
-  y: Float64Array,
-): void {
-  const length = (s: number) => Math.hypot(x[from[s]] - x[to[s]], y[from[s]] - y[to[s]]);
-  let mean = 0;
-  for (let s = 0; s < edgeCount; s++) mean += length(s) / edgeCount;
-  for (let s = 0; s < strength.length; s++) {
-    const share = Math.min(4, Math.max(0.25, length(s) / mean));
-    strength[s] *= Math.sqrt(share);
-  }
-}
-
-/** The middle of an edge of the disc, for lines that cross it. */
-export function edgeMiddle(cover: Graph, layout: DiscLayout, e: number): [number, number] {
-  const v = dartStart(cover, 2 * e), w = dartEnd(cover, 2 * e);
-  return [(layout.x[v] + layout.x[w]) / 2, (layout.y[v] + layout.y[w]) / 2];
 }

@@ -23,6 +23,7 @@
  * ```
  * @module
  */
+export { type DiscOptions, drawEmbedding } from "./disc.ts";
 export { Picture } from "./picture.ts";
 export { registerRenderers } from "./register.ts";
 export { report, type ReportOptions } from "./report.ts";
