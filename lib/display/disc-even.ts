@@ -12,7 +12,7 @@ export interface Drawing {
   readonly y: Float64Array;
   /** 1 where a point stays where it is. */
   readonly fixed: Uint8Array;
-  /** Triples of points, all turning the same way round. */
+  /** Triples of points, all turning the same way round; together they cover the drawing. */
   readonly triangles: readonly (readonly [number, number, number])[];
   /** Pairs of points. */
   readonly edges: readonly (readonly [number, number])[];
@@ -22,16 +22,19 @@ const SWEEPS = 150;
 /** Weight of the edges against the triangles. */
 const TENSION = 0.35;
 
-/** Evens a drawing out. Triangles that are flat or turned over at the start are left out. */
+/** Evens a drawing out. Corners of triangles that are flat or turned over at the start stay. */
 export function evenOut(drawing: Drawing): void {
   const { x, y, fixed } = drawing;
   const twice = ([p, a, b]: readonly number[]) =>
     (x[a] - x[p]) * (y[b] - y[p]) - (y[a] - y[p]) * (x[b] - x[p]);
   const turn = Math.sign(drawing.triangles.reduce((sum, t) => sum + twice(t), 0));
-  const triangles = drawing.triangles.map(([p, a, b]) =>
-    (turn > 0 ? [p, a, b] : [p, b, a]) as [number, number, number]
-  ).filter((t) => twice(t) > 1e-12);
-  if (triangles.length === 0) return;
+  const triangles: (readonly [number, number, number])[] = [];
+  const still = fixed.slice();
+  for (const [p, a, b] of drawing.triangles) {
+    const triangle = turn > 0 ? [p, a, b] as const : [p, b, a] as const;
+    if (twice(triangle) > 1e-12) triangles.push(triangle);
+    else still[p] = still[a] = still[b] = 1;
+  }
   // The unit disc shared among the triangles gives the length an edge should have.
   const tension = TENSION * triangles.length / (4 * Math.PI);
   const around: [number, number][][] = Array.from(x, () => []);
@@ -57,7 +60,7 @@ export function evenOut(drawing: Drawing): void {
   };
   for (let sweep = 0; sweep < SWEEPS; sweep++) {
     for (let p = 0; p < x.length; p++) {
-      if (fixed[p] === 0 && around[p].length > 0) step(p);
+      if (still[p] === 0 && around[p].length > 0) step(p);
     }
   }
 

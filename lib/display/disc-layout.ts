@@ -154,17 +154,18 @@ function relax(
     x,
     y,
     fixed,
-    triangles: trianglesOf(cover, faceOf, inside),
+    triangles: trianglesOf(cover, faceOf, inside, fixed),
     edges: edges.map((e) => [cover.tails[e], cover.heads[e]]),
   });
   return { x, y };
 }
 
-/** The stars of the inner faces. A face that meets a vertex twice is no star and is left out. */
+/** The stars of the inner faces. A face that meets a vertex twice is none; its corners stay. */
 function trianglesOf(
   cover: Graph,
   faceOf: Int32Array,
   inside: Uint8Array,
+  fixed: Uint8Array,
 ): [number, number, number][] {
   const simple = inside.slice();
   const met = new Set<number>();
@@ -175,8 +176,9 @@ function trianglesOf(
   }
   const triangles: [number, number, number][] = [];
   for (let d = 0; d < faceOf.length; d++) {
-    if (simple[faceOf[d]] === 0) continue;
-    triangles.push([cover.n + faceOf[d], dartStart(cover, d), dartEnd(cover, d)]);
+    const f = faceOf[d], u = dartStart(cover, d);
+    if (simple[f] !== 0) triangles.push([cover.n + f, u, dartEnd(cover, d)]);
+    else if (inside[f] !== 0) fixed[u] = 1;
   }
   return triangles;
 }

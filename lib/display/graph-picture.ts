@@ -57,7 +57,7 @@ interface Placed extends Layout {
 
 /** Scales positions to the width of the picture, with at most four fifths of it as height. */
 function fitted(layout: Layout, n: number): Placed {
-  let left = Infinity, right = -Infinity, top = Infinity, bottom = -Infinity;
+  let left = layout.x[0] ?? 0, right = left, top = layout.y[0] ?? 0, bottom = top;
   for (let v = 0; v < n; v++) {
     left = Math.min(left, layout.x[v]);
     right = Math.max(right, layout.x[v]);
@@ -68,7 +68,7 @@ function fitted(layout: Layout, n: number): Placed {
   const wide = right > left ? inner / (right - left) : Infinity;
   const high = bottom > top ? (0.8 * inner) / (bottom - top) : Infinity;
   const scale = Number.isFinite(Math.min(wide, high)) ? Math.min(wide, high, 90) : 1;
-  const shift = MARGIN + (inner - scale * (right - left || 0)) / 2;
+  const shift = MARGIN + (inner - scale * (right - left)) / 2;
   const x = new Float64Array(n), y = new Float64Array(n);
   for (let v = 0; v < n; v++) {
     x[v] = shift + scale * (layout.x[v] - left);
@@ -77,8 +77,8 @@ function fitted(layout: Layout, n: number): Placed {
   return {
     x,
     y,
-    height: 2 * MARGIN + scale * (bottom - top || 0),
-    unit: Math.sqrt(area(x, y) / n),
+    height: 2 * MARGIN + scale * (bottom - top),
+    unit: Math.sqrt(area(x, y) / Math.max(1, n)),
   };
 }
 
