@@ -122,7 +122,9 @@ export function methodSection(solution: Solution): string {
   if (solution.parts.length === 0) return "";
   const { certificate } = solution;
   const proof = certificate === undefined
-    ? "There is no certificate, because optimality is not proved."
+    ? solution.status === "optimal"
+      ? "The certificate is not at hand here."
+      : "There is no certificate, because optimality is not proved."
     : `The certificate has ${counted(certificate.parts.length, "part")}, each with a proof of a ` +
       `bound; the bounds add up to the worth reached.`;
   return paragraph(proof) +
