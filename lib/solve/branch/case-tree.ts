@@ -4,6 +4,8 @@
  * multipliers that differ from those inherited; O(size of the tree) time and no recursion.
  */
 import type { CaseNode, CasesProof } from "../../certify/certificate.ts";
+import type { Meter } from "../../run/meter.ts";
+import { SequenceTable } from "./sequence-table.ts";
 
 /** A node of the tree. A search fills in the children as it goes. */
 export interface Case {
@@ -19,31 +21,22 @@ export interface Case {
 }
 
 export class CaseTree {
-  readonly #cliques: Int32Array[] = [];
-  readonly #oddCycles: Int32Array[] = [];
-  readonly #ids = new Map<string, number>();
+  readonly #cliques = new SequenceTable();
+  readonly #oddCycles = new SequenceTable();
 
   /** Number of terms so far. */
   get termCount(): number {
-    return this.#cliques.length + this.#oddCycles.length;
+    return this.#cliques.count + this.#oddCycles.count;
   }
 
   /**
-   * Numbers a clique; the same set of vertices gets the same number.
+   * Numbers a clique; the same sequence of vertices gets the same number.
    *
-   * @param vertices pairwise adjacent, in any order
+   * @param vertices its first `size` entries are pairwise adjacent
    * @returns a term for `Case.terms`, even
    */
-  clique(vertices: ArrayLike<number>): number {
-    const sorted = Int32Array.from(vertices).sort();
-    const key = sorted.join();
-    let id = this.#ids.get(key);
-    if (id === undefined) {
-      id = 2 * this.#cliques.length;
-      this.#cliques.push(sorted);
-      this.#ids.set(key, id);
-    }
-    return id;
+  clique(vertices: ArrayLike<number>, size: number = vertices.length): number {
+    return 2 * this.#cliques.number(vertices, size);
   }
 
   /**
@@ -53,8 +46,7 @@ export class CaseTree {
    * @returns a term for `Case.terms`, odd
    */
   oddCycle(vertices: ArrayLike<number>): number {
-    this.#oddCycles.push(Int32Array.from(vertices));
-    return 2 * this.#oddCycles.length - 1;
+    return 2 * this.#oddCycles.number(vertices) + 1;
   }
 
   /**
@@ -63,11 +55,13 @@ export class CaseTree {
    * @param root every inner node complete
    * @param denominator what the multipliers are multiples of the inverse of
    * @param labels length n: the number each vertex carries in the certificate
+   * @param meter counts the numbers written
+   * @throws {Interrupted} when the meter runs out
    */
-  toProof(root: Case, denominator: number, labels: Int32Array): CasesProof {
+  toProof(root: Case, denominator: number, labels: Int32Array, meter?: Meter): CasesProof {
     // Which terms occur, and their final numbers: cliques first, then odd cycles.
-    const usedCliques = new Uint8Array(this.#cliques.length);
-    const usedCycles = new Uint8Array(this.#oddCycles.length);
+    const usedCliques = new Uint8Array(this.#cliques.count);
+    const usedCycles = new Uint8Array(this.#oddCycles.count);
     const stack: Case[] = [root];
     while (stack.length > 0) {
       const node = stack.pop()!;
@@ -84,12 +78,12 @@ export class CaseTree {
     usedCliques.forEach((used, i) => {
       if (used === 0) return;
       number[2 * i] = cliques.length;
-      cliques.push(labelled(this.#cliques[i]));
+      cliques.push(labelled(this.#cliques.at(i)));
     });
     usedCycles.forEach((used, i) => {
       if (used === 0) return;
       number[2 * i + 1] = cliques.length + oddCycles.length;
-      oddCycles.push(labelled(this.#oddCycles[i]));
+      oddCycles.push(labelled(this.#oddCycles.at(i)));
     });
 
     // Preorder, with the multipliers in force kept in `now` and undone on the way back.
@@ -134,6 +128,7 @@ export class CaseTree {
         ...(node.on !== undefined ? { on: labels[node.on] } : {}),
       });
       path.push({ node, undo, before });
+      meter?.tick(16 + 16 * set.length);
       if (node.on !== undefined) {
         next = node.chosen!;
         continue;

@@ -24,6 +24,8 @@ export interface SearchResult {
   readonly root?: Case;
   readonly denominator: number;
   readonly nodes: number;
+  /** The search was given up because its proof had grown too large. */
+  readonly outgrown?: boolean;
 }
 
 /**
@@ -34,6 +36,7 @@ export interface SearchResult {
  * @param start a stable set to beat, with its weight
  * @param tree where the terms of the proof are numbered
  * @param meter an interruption ends the search; it is not passed on
+ * @param mostNumbers ends the search, with `outgrown` set, when the proof holds more numbers
  */
 export function coverSearch(
   graph: Graph,
@@ -41,8 +44,9 @@ export function coverSearch(
   start: { chosen: Uint8Array; weight: number },
   tree: CaseTree,
   meter: Meter,
+  mostNumbers = Infinity,
 ): SearchResult {
-  const search = new CoverSearch(graph, weights, start, tree, meter);
+  const search = new CoverSearch(graph, weights, start, tree, meter, mostNumbers);
   const open = search.run();
   return {
     chosen: search.bestChosen,
@@ -51,6 +55,7 @@ export function coverSearch(
     root: search.stopped ? undefined : search.root,
     denominator: 1,
     nodes: search.nodes,
+    outgrown: search.outgrown,
   };
 }
 
@@ -70,6 +75,8 @@ class CoverSearch {
   readonly bestChosen: Uint8Array;
   nodes = 0;
   stopped = false;
+  /** Stopped because the proof has grown too large to keep. */
+  outgrown = false;
   root: Case = {};
   readonly #n: number;
   readonly #words: number;
@@ -83,8 +90,13 @@ class CoverSearch {
   readonly #path: number[] = [];
   readonly #tree: CaseTree;
   readonly #meter: Meter;
+  /** The clique being built, by position and by vertex. */
   readonly #clique: Int32Array;
+  readonly #named: Int32Array;
   readonly #candidates: Int32Array;
+  readonly #mostNumbers: number;
+  #numbers = 0;
+  #work = 0;
 
   constructor(
     graph: Graph,
@@ -92,8 +104,10 @@ class CoverSearch {
     start: { chosen: Uint8Array; weight: number },
     tree: CaseTree,
     meter: Meter,
+    mostNumbers: number,
   ) {
     const n = graph.n;
+    this.#mostNumbers = mostNumbers;
     this.#n = n;
     this.#words = (n + 31) >>> 5;
     this.#tree = tree;
@@ -111,6 +125,7 @@ class CoverSearch {
       this.#near[q * this.#words + (p >>> 5)] |= 1 << (p & 31);
     }
     this.#clique = new Int32Array(n);
+    this.#named = new Int32Array(n);
     this.#candidates = new Int32Array(this.#words);
   }
 
@@ -151,13 +166,7 @@ class CoverSearch {
     const child = this.#level(depth + 1).inPlay;
     let at = node;
     for (let i = count - 1; i >= 0; i--) {
-      try {
-        this.#meter.tick(4 * words);
-        this.#meter.tick(this.#n >>> 2);
-      } catch (error) {
-        if (!(error instanceof Interrupted)) throw error;
-        this.stopped = true;
-      }
+      this.stopped ||= this.#interrupted();
       // Open now: this case and those not begun, all within the cover and the uncovered rest.
       if (this.stopped) return weight + used + surplus;
       const p = branch[i], row = p * words;
@@ -184,7 +193,7 @@ class CoverSearch {
   #cover(depth: number, budget: number, terms: number[]): { used: number; count: number } {
     const { inPlay, uncovered, rest, branch } = this.#level(depth);
     const words = this.#words, near = this.#near, weights = this.#weights;
-    const clique = this.#clique, candidates = this.#candidates;
+    const clique = this.#clique, named = this.#named, candidates = this.#candidates;
     let used = 0, count = 0, work = 0;
     for (let k = 0; k < words; k++) {
       uncovered[k] = inPlay[k];
@@ -221,7 +230,8 @@ class CoverSearch {
           least = budget - used;
         }
         used += least;
-        terms.push(this.#tree.clique(this.#named(size)), least);
+        for (let i = 0; i < size; i++) named[i] = this.#order[clique[i]];
+        terms.push(this.#tree.clique(named, size), least);
         for (let i = 0; i < size; i++) {
           const q = clique[i];
           rest[q] -= least;
@@ -231,15 +241,21 @@ class CoverSearch {
       }
     }
     this.#work += work;
+    this.#numbers += 3 * terms.length;
     return { used, count };
   }
 
-  #work = 0;
-
-  #named(size: number): Int32Array {
-    const list = new Int32Array(size);
-    for (let i = 0; i < size; i++) list[i] = this.#order[this.#clique[i]];
-    return list;
+  /** Passes the work done on to the meter. */
+  #interrupted(): boolean {
+    if (this.#numbers > this.#mostNumbers) return this.outgrown = true;
+    try {
+      this.#meter.tick(this.#work + this.#words);
+      this.#work = 0;
+      return false;
+    } catch (error) {
+      if (!(error instanceof Interrupted)) throw error;
+      return true;
+    }
   }
 
   #record(weight: number): void {

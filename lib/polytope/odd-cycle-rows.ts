@@ -1,0 +1,154 @@
+/**
+ * Odd cycles C with x(C) > (|C| - 1) / 2, found exactly: with slack s(uv) = 1 - x(u) - x(v) on the
+ * edges, these are the odd cycles of slack below 1, and a shortest odd closed walk is a shortest path
+ * in the double cover (Grötschel, Lovász and Schrijver, "Geometric algorithms and combinatorial
+ * optimization", 1988, chapter 9; written from memory).
+ */
+import type { Graph } from "../graph/graph.ts";
+
+/**
+ * Violated odd cycles, at most one through each vertex.
+ *
+ * @param graph a simple graph
+ * @param x length n, edge rows satisfied up to rounding
+ * @param limit most cycles to return; the most violated are
+ * @param epsilon least violation worth a row
+ * @returns simple odd cycles of at least five vertices, vertices in order. One bounded
+ *   shortest-path search for each fractional vertex.
+ */
+export function violatedOddCycles(
+  graph: Graph,
+  x: Float64Array,
+  limit: number,
+  epsilon = 0.02,
+): number[][] {
+  const { n, offsets, targets } = graph;
+  // A cycle of slack below 1 - 2ε; the slack of a cycle is 1 - 2·violation.
+  const bound = 1 - 2 * epsilon;
+  const dist = new Float64Array(2 * n).fill(Infinity);
+  const parent = new Int32Array(2 * n).fill(-1);
+  const covered = new Uint8Array(n);
+  const found: { cycle: number[]; slack: number }[] = [];
+  const touched: number[] = [];
+  const fractional = (v: number): boolean => x[v] > 1e-6 && x[v] < 1 - 1e-6;
+  for (let root = 0; root < n; root++) {
+    if (covered[root] !== 0 || !fractional(root)) continue;
+    // Nodes of the cover: v and n + v. The walk from root to its copy.
+    const heap = new Heap(dist);
+    dist[root] = 0;
+    touched.push(root);
+    heap.push(root);
+    let reached = false;
+    while (heap.size > 0) {
+      const at = heap.pop();
+      if (at === n + root) {
+        reached = true;
+        break;
+      }
+      const v = at % n, flip = at < n ? n : 0;
+      for (let a = offsets[v]; a < offsets[v + 1]; a++) {
+        const u = targets[a];
+        if (!fractional(u)) continue;
+        const next = dist[at] + Math.max(0, 1 - x[u] - x[v]);
+        const to = u + flip;
+        if (next >= bound || next >= dist[to]) continue;
+        if (dist[to] === Infinity) touched.push(to);
+        dist[to] = next;
+        parent[to] = at;
+        heap.push(to);
+      }
+    }
+    if (reached) {
+      const walk: number[] = [];
+      for (let at = n + root; at !== root; at = parent[at]) walk.push(at % n);
+      const cycle = simpleOddCycle(walk);
+      if (cycle.length >= 5) {
+        let slack = 0;
+        for (let i = 0; i < cycle.length; i++) {
+          slack += 1 - x[cycle[i]] - x[cycle[(i + 1) % cycle.length]];
+          covered[cycle[i]] = 1;
+        }
+        found.push({ cycle, slack });
+      }
+    }
+    for (const at of touched) {
+      dist[at] = Infinity;
+      parent[at] = -1;
+    }
+    touched.length = 0;
+  }
+  return found.sort((a, b) => a.slack - b.slack).slice(0, limit).map((f) => f.cycle);
+}
+
+/** A simple odd cycle within a closed walk of odd length, given by its vertices in order. */
+export function simpleOddCycle(walk: readonly number[]): number[] {
+  const stack: number[] = [];
+  const place = new Map<number, number>();
+  for (const v of [...walk, walk[0]]) {
+    const at = place.get(v);
+    if (at === undefined) {
+      place.set(v, stack.length);
+      stack.push(v);
+      continue;
+    }
+    const length = stack.length - at;
+    if (length % 2 === 1) return stack.slice(at);
+    while (stack.length > at + 1) place.delete(stack.pop() as number);
+  }
+  throw new Error("a closed walk of odd length contains an odd cycle");
+}
+
+/** A binary heap of nodes by distance; a node may stand in it more than once. */
+class Heap {
+  readonly #dist: Float64Array;
+  readonly #nodes: number[] = [];
+  readonly #keys: number[] = [];
+
+  constructor(dist: Float64Array) {
+    this.#dist = dist;
+  }
+
+  get size(): number {
+    return this.#nodes.length;
+  }
+
+  push(node: number): void {
+    const nodes = this.#nodes, keys = this.#keys, key = this.#dist[node];
+    let i = nodes.length;
+    nodes.push(node);
+    keys.push(key);
+    while (i > 0) {
+      const up = (i - 1) >> 1;
+      if (keys[up] < key || (keys[up] === key && nodes[up] <= node)) break;
+      nodes[i] = nodes[up];
+      keys[i] = keys[up];
+      i = up;
+    }
+    nodes[i] = node;
+    keys[i] = key;
+  }
+
+  pop(): number {
+    const nodes = this.#nodes, keys = this.#keys;
+    const top = nodes[0];
+    const node = nodes.pop() as number, key = keys.pop() as number;
+    if (nodes.length === 0) return top;
+    let i = 0;
+    for (;;) {
+      let down = 2 * i + 1;
+      if (down >= nodes.length) break;
+      const other = down + 1;
+      if (
+        other < nodes.length &&
+        (keys[other] < keys[down] || (keys[other] === keys[down] && nodes[other] < nodes[down]))
+      ) down = other;
+      if (key < keys[down] || (key === keys[down] && node <= nodes[down])) break;
+      nodes[i] = nodes[down];
+      keys[i] = keys[down];
+      i = down;
+    }
+    nodes[i] = node;
+    keys[i] = key;
+    return top;
+  }
+}

@@ -1,0 +1,156 @@
+/**
+ * Exact branch and bound for any piece. Two searches share the work: clique covers on bit sets (very
+ * many cheap nodes, good for small and dense pieces) and linear relaxations with rounded duals (few
+ * strong nodes, good for sparse and structured ones). Which of the two fits a piece is hard to foresee,
+ * so they take turns under budgets of work that grow fourfold; the loser costs a constant factor.
+ * Budgets count work, not time: the same piece and seed take the same path on every machine.
+ */
+import { edgeCliqueCover } from "../polytope/clique-rows.ts";
+import { loadHighs } from "../polytope/highs.ts";
+import { Interrupted, type Meter } from "../run/meter.ts";
+import { CaseTree, proofSize } from "./branch/case-tree.ts";
+import { coverSearch, type SearchResult } from "./branch/cover-search.ts";
+import { relaxationSearch } from "./branch/relaxation-search.ts";
+import type { Piece, Solved } from "./engine.ts";
+import { type Incumbent, localSearch } from "./incumbent.ts";
+
+/** Bit sets of n² bits are made up to this size. */
+const MOST_COVER_VERTICES = 4096;
+/** With more edges than this the relaxation is left out, unless it is the only search. */
+const MOST_RELAXATION_EDGES = 300_000;
+/** First turns, in units of work (about 2^18 a millisecond); each later turn has four times more. */
+const FIRST_COVER_TURN = 2 ** 24;
+const FIRST_RELAXATION_TURN = 2 ** 28;
+/** A proof with more numbers than this is not kept: the search it comes from is given up. */
+const MOST_NUMBERS = 2 ** 24;
+
+/**
+ * Solves a piece exactly, or says how far it came.
+ *
+ * @param piece a connected piece; weights positive integers with a sum below 2^53
+ * @param meter seed and limits; an interruption ends the search within a few milliseconds
+ * @param start a stable set known from elsewhere, with its exact weight
+ * @returns the heaviest stable set found. `optimal` with a proof by cases; or `feasible`, with the
+ *   largest bound of a case not closed
+ */
+export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Promise<Solved> {
+  const { graph, weights, labels } = piece;
+  const { n, m } = graph;
+  let total = 0;
+  for (let v = 0; v < n; v++) total += weights[v];
+
+  const found = localSearch(
+    graph,
+    weights,
+    meter,
+    Math.min(2 ** 25, 4000 * (n + m)),
+    start?.chosen,
+  );
+  let best: Incumbent = start !== undefined && start.weight >= found.weight ? start : found;
+  let upperBound = piece.doubledCosts === undefined ? total : Math.floor(total / 2);
+  let nodes = 0;
+  const solved = (search: string, result?: SearchResult, tree?: CaseTree): Solved => {
+    const figures = { nodes, search };
+    if (result?.root !== undefined && tree !== undefined) {
+      const proof = unlessInterrupted(() =>
+        tree.toProof(result.root!, result.denominator, labels, meter)
+      );
+      if (proof !== undefined) {
+        const { numbers } = proofSize(proof);
+        return {
+          status: "optimal",
+          ...best,
+          upperBound: best.weight,
+          proof,
+          figures: { ...figures, "numbers in the proof": numbers },
+        };
+      }
+    }
+    return { status: "feasible", ...best, upperBound: Math.max(best.weight, upperBound), figures };
+  };
+  if (piece.doubledCosts !== undefined && best.weight === upperBound) {
+    return {
+      status: "optimal",
+      ...best,
+      upperBound,
+      proof: packingOf(piece, piece.doubledCosts),
+      figures: { nodes: 0, search: "half-integral relaxation" },
+    };
+  }
+
+  const covers = n <= MOST_COVER_VERTICES;
+  const relaxations = m <= MOST_RELAXATION_EDGES || !covers;
+  let coverTurn = relaxations ? FIRST_COVER_TURN : Infinity;
+  let relaxationTurn = covers ? FIRST_RELAXATION_TURN : Infinity;
+  let coverOutgrown = !covers, relaxationOutgrown = !relaxations;
+  let cliques: number[][] | undefined;
+  while (!(coverOutgrown && relaxationOutgrown)) {
+    if (!coverOutgrown) {
+      const tree = new CaseTree();
+      const turn = meter.within(relaxationOutgrown ? Infinity : coverTurn);
+      const result = coverSearch(graph, weights, best, tree, turn, MOST_NUMBERS);
+      take(result);
+      if (result.root !== undefined) return solved("clique covers", result, tree);
+      if (meter.interruption !== undefined) return solved("clique covers");
+      coverOutgrown = result.outgrown === true;
+      coverTurn *= 4;
+    }
+    if (!relaxationOutgrown) {
+      cliques ??= unlessInterrupted(() => edgeCliqueCover(graph, meter));
+      if (cliques === undefined) return solved("linear relaxations");
+      const highs = await loadHighs();
+      const tree = new CaseTree();
+      const turn = meter.within(coverOutgrown ? Infinity : relaxationTurn);
+      const result = relaxationSearch(
+        graph,
+        weights,
+        cliques,
+        best,
+        tree,
+        highs,
+        turn,
+        MOST_NUMBERS,
+      );
+      take(result);
+      if (result.root !== undefined) return solved("linear relaxations", result, tree);
+      if (meter.interruption !== undefined) return solved("linear relaxations");
+      relaxationOutgrown = result.outgrown === true;
+      relaxationTurn *= 4;
+    }
+    await meter.breathe();
+    if (meter.interruption !== undefined) break;
+  }
+  return solved(`given up with a proof of more than ${MOST_NUMBERS} numbers`);
+
+  function take(result: SearchResult): void {
+    nodes += result.nodes;
+    if (result.weight > best.weight) best = { chosen: result.chosen, weight: result.weight };
+    upperBound = Math.min(upperBound, result.upperBound);
+    meter.report("cases", {
+      done: nodes,
+      lower: best.weight,
+      upper: Math.max(best.weight, upperBound),
+    });
+  }
+}
+
+/** What `make` makes; undefined when the meter runs out over it. */
+function unlessInterrupted<T>(make: () => T): T | undefined {
+  try {
+    return make();
+  } catch (error) {
+    if (error instanceof Interrupted) return undefined;
+    throw error;
+  }
+}
+
+/** The piece's own edge costs as a proof of half its weight. */
+function packingOf({ graph, labels }: Piece, doubledCosts: Float64Array): Solved["proof"] {
+  const ends: number[] = [], doubled: number[] = [];
+  for (let e = 0; e < graph.m; e++) {
+    if (doubledCosts[e] === 0) continue;
+    ends.push(labels[graph.tails[e]], labels[graph.heads[e]]);
+    doubled.push(doubledCosts[e]);
+  }
+  return { rule: "packing", ends, doubled };
+}

@@ -1,0 +1,476 @@
+/**
+ * Branch and bound with linear relaxations as bounds: cliques and odd cycles as rows, solved in
+ * floating point by HiGHS and rounded to multipliers that prove an exact integer bound. For sparse
+ * and for structured pieces, where few strong nodes beat many cheap ones.
+ *
+ * Depth first, the case with the vertex before the case without; the vertex is picked by pseudo-costs
+ * that begin with trial solves (strong branching). No recursion.
+ */
+import type { Graph } from "../../graph/graph.ts";
+import { violatedCliques } from "../../polytope/clique-rows.ts";
+import type { Highs } from "../../polytope/highs.ts";
+import { rowsOfSets, stableSetModel } from "../../polytope/model.ts";
+import { violatedOddCycles } from "../../polytope/odd-cycle-rows.ts";
+import { Relaxation, type RelaxedPoint } from "../../polytope/relaxation.ts";
+import { Interrupted, type Meter } from "../../run/meter.ts";
+import type { Case, CaseTree } from "./case-tree.ts";
+import type { SearchResult } from "./cover-search.ts";
+import { denominatorFor, FractionSum } from "./rounded-duals.ts";
+
+/** Trial solves of one vertex before its pseudo-costs are trusted. */
+const TRIALS = 2;
+/** Vertices tried at one node at most. */
+const CANDIDATES = 8;
+/** Rounds of new rows at the root, and at other nodes. */
+const ROOT_ROUNDS = 40;
+const NODE_ROUNDS = 1;
+/** A row that was no use in so many solves is taken out. */
+const IDLE_SOLVES = 60;
+/** New rows in one round. */
+const ROWS_PER_ROUND = 60;
+
+/**
+ * Finds a heaviest stable set and the cases that prove it.
+ *
+ * @param graph a simple graph
+ * @param weights length n, positive integers with a sum below 2^53
+ * @param cliques cliques that cover every edge; the first rows
+ * @param start a stable set to beat, with its weight
+ * @param tree where the terms of the proof are numbered
+ * @param highs the loaded solver
+ * @param meter an interruption ends the search; it is not passed on
+ * @param mostNumbers ends the search, with `outgrown` set, when the proof holds more numbers
+ */
+export function relaxationSearch(
+  graph: Graph,
+  weights: Float64Array,
+  cliques: readonly number[][],
+  start: { chosen: Uint8Array; weight: number },
+  tree: CaseTree,
+  highs: Highs,
+  meter: Meter,
+  mostNumbers = Infinity,
+): SearchResult {
+  const search = new RelaxationSearch(graph, weights, cliques, start, tree, highs);
+  let open = -Infinity;
+  let complete = true;
+  try {
+    search.run(meter, mostNumbers);
+  } catch (error) {
+    if (!(error instanceof Interrupted)) throw error;
+    open = search.openBound();
+    complete = false;
+  } finally {
+    search.dispose();
+  }
+  return {
+    chosen: search.bestChosen,
+    weight: search.bestWeight,
+    upperBound: Math.max(search.bestWeight, open),
+    root: complete ? search.root : undefined,
+    denominator: search.denominator,
+    nodes: search.nodes,
+    outgrown: search.outgrown,
+  };
+}
+
+/** A solved node: the relaxed point, and what its rounded multipliers prove. */
+interface Evaluation {
+  readonly point: RelaxedPoint | undefined;
+  /** Exact bound for the whole case, chosen vertices included. */
+  readonly bound: number;
+  /** Pairs (term, multiplier). */
+  readonly terms: number[];
+}
+
+/** A branching whose second case has not been closed. */
+interface Frame {
+  readonly node: Case;
+  readonly trail: number;
+  /** Proved for the whole node. */
+  readonly bound: number;
+  readonly value: number;
+  readonly x: number;
+}
+
+const FREE = 0, CHOSEN = 1, OUT = 2;
+
+class RelaxationSearch {
+  readonly bestChosen: Uint8Array;
+  bestWeight: number;
+  readonly root: Case = {};
+  readonly denominator: number;
+  nodes = 0;
+  outgrown = false;
+  #numbers = 0;
+  readonly #graph: Graph;
+  readonly #weights: Float64Array;
+  readonly #tree: CaseTree;
+  readonly #relaxation: Relaxation;
+  /** By row: its term, its vertices, its right-hand side less the chosen vertices in it. */
+  #terms: number[] = [];
+  #sets: (readonly number[])[] = [];
+  #rhs: number[] = [];
+  /** By row: for how many solves its multiplier has been zero. */
+  #idle: number[] = [];
+  /** The rows each vertex is in. */
+  #rowsOf: number[][];
+  readonly #firstRows: number;
+  /** Weights handed to HiGHS are divided by this. */
+  readonly #scale: number;
+  /** Length n: FREE, CHOSEN or OUT; `#trail` lists what is not free, in order. */
+  readonly #state: Uint8Array;
+  readonly #trail: number[] = [];
+  #chosenWeight = 0;
+  readonly #lower: Float64Array;
+  readonly #upper: Float64Array;
+  readonly #load: Float64Array;
+  readonly #frames: Frame[] = [];
+  #currentBound = Infinity;
+  /** Pseudo-costs: summed loss of bound per unit of change, and trials; chosen and left. */
+  readonly #loss: [Float64Array, Float64Array];
+  readonly #trials: [Int32Array, Int32Array];
+
+  constructor(
+    graph: Graph,
+    weights: Float64Array,
+    cliques: readonly number[][],
+    start: { chosen: Uint8Array; weight: number },
+    tree: CaseTree,
+    highs: Highs,
+  ) {
+    const { n } = graph;
+    this.#graph = graph;
+    this.#weights = weights;
+    this.#tree = tree;
+    this.bestChosen = start.chosen.slice();
+    this.bestWeight = start.weight;
+    let heaviest = 1;
+    for (let v = 0; v < n; v++) heaviest = Math.max(heaviest, weights[v]);
+    this.denominator = denominatorFor(heaviest);
+    let scale = 1;
+    while (heaviest / scale > 4096) scale *= 2;
+    this.#scale = scale;
+    this.#rowsOf = Array.from({ length: n }, () => []);
+    for (const clique of cliques) this.#addRow(clique, true);
+    this.#firstRows = cliques.length;
+    this.#relaxation = new Relaxation(highs, this.#model());
+    this.#state = new Uint8Array(n);
+    this.#lower = new Float64Array(n);
+    this.#upper = new Float64Array(n);
+    this.#load = new Float64Array(n);
+    this.#loss = [new Float64Array(n), new Float64Array(n)];
+    this.#trials = [new Int32Array(n), new Int32Array(n)];
+  }
+
+  dispose(): void {
+    this.#relaxation.dispose();
+  }
+
+  /** A bound for all cases not closed; before the root is solved, Infinity. */
+  openBound(): number {
+    let bound = this.#currentBound;
+    for (const frame of this.#frames) bound = Math.max(bound, frame.bound);
+    return bound;
+  }
+
+  run(meter: Meter, mostNumbers: number): void {
+    let node: Case | undefined = this.root;
+    let isRoot = true;
+    while (node !== undefined) {
+      this.nodes++;
+      if (this.#numbers > mostNumbers) {
+        this.outgrown = true;
+        throw new Interrupted("work");
+      }
+      const result = this.#close(meter, node, isRoot);
+      isRoot = false;
+      if (result !== undefined) {
+        const { at, vertex, evaluation } = result;
+        at.on = vertex;
+        at.chosen = {};
+        at.left = {};
+        const { bound, point } = evaluation;
+        this.#frames.push({
+          node: at,
+          trail: this.#trail.length,
+          bound,
+          value: point?.value ?? bound,
+          x: point?.x[vertex] ?? 0.5,
+        });
+        this.#currentBound = bound;
+        this.#choose(vertex);
+        node = at.chosen;
+        continue;
+      }
+      const frame = this.#frames.pop();
+      if (frame === undefined) return;
+      this.#undo(frame.trail);
+      this.#leave(frame.node.on as number);
+      this.#currentBound = frame.bound;
+      node = frame.node.left as Case;
+      meter.report("cases", {
+        done: this.nodes,
+        lower: this.bestWeight,
+        upper: Math.max(this.bestWeight, this.openBound()),
+      });
+    }
+  }
+
+  /**
+   * Closes a node, perhaps by way of one-sided branchings written below it, or returns where and on
+   * what to branch.
+   */
+  #close(
+    meter: Meter,
+    node: Case,
+    isRoot: boolean,
+  ): { at: Case; vertex: number; evaluation: Evaluation } | undefined {
+    let at = node;
+    for (;;) {
+      const evaluation = this.#tightened(meter, isRoot);
+      at.terms = evaluation.terms;
+      this.#numbers += evaluation.terms.length;
+      if (evaluation.bound > this.bestWeight && !this.#state.includes(FREE)) this.#takeState();
+      if (evaluation.bound <= this.bestWeight) return undefined;
+      this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
+      const vertex = this.#pick(meter, evaluation);
+      if (typeof vertex === "number") return { at, vertex, evaluation };
+      // One case is closed already: write it, go on in the other.
+      at.on = vertex.on;
+      const closed: Case = { terms: vertex.terms };
+      const open: Case = {};
+      [at.chosen, at.left] = vertex.closed === CHOSEN ? [closed, open] : [open, closed];
+      if (vertex.closed === CHOSEN) this.#leave(vertex.on);
+      else this.#choose(vertex.on);
+      at = open;
+    }
+  }
+
+  /** Solves the current node and adds violated rows while that helps. */
+  #tightened(meter: Meter, isRoot: boolean): Evaluation {
+    let evaluation = this.#evaluate(meter);
+    const rounds = isRoot ? ROOT_ROUNDS : NODE_ROUNDS;
+    for (let round = 0; round < rounds; round++) {
+      if (evaluation.bound <= this.bestWeight || evaluation.point === undefined) break;
+      const { x, value } = evaluation.point;
+      if (this.#takeIfIntegral(x)) {
+        if (evaluation.bound <= this.bestWeight) break;
+      }
+      const cliques = violatedCliques(this.#graph, x, ROWS_PER_ROUND);
+      const cycles = cliques.length >= ROWS_PER_ROUND / 2
+        ? []
+        : violatedOddCycles(this.#graph, x, ROWS_PER_ROUND);
+      meter.tick(8 * (this.#graph.m + this.#graph.n));
+      if (cliques.length + cycles.length === 0) break;
+      const first = this.#sets.length;
+      for (const clique of cliques) this.#addRow(clique, true);
+      for (const cycle of cycles) this.#addRow(cycle, false);
+      this.#relaxation.add(
+        rowsOfSets(
+          this.#sets.slice(first),
+          this.#sets.slice(first).map((_, i) => this.#fullRhs(first + i)),
+        ),
+      );
+      evaluation = this.#evaluate(meter);
+      if (evaluation.point !== undefined) {
+        this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
+        if (value - evaluation.point.value < 1e-4 * Math.max(1, Math.abs(value)) && !isRoot) break;
+        if (value - evaluation.point.value < 1e-5 * Math.max(1, Math.abs(value))) break;
+      }
+    }
+    if (evaluation.bound > this.bestWeight) this.#dropIdleRows(isRoot ? 0 : IDLE_SOLVES);
+    return evaluation;
+  }
+
+  /** Takes rows out again that have done nothing in more than so many solves in a row. */
+  #dropIdleRows(patience: number): void {
+    const drop = new Uint8Array(this.#sets.length);
+    let entries = 0;
+    for (let row = this.#firstRows; row < drop.length; row++) {
+      if (this.#idle[row] <= patience) continue;
+      drop[row] = 1;
+      entries += this.#sets[row].length;
+    }
+    if (entries === 0) return;
+    this.#relaxation.remove(drop, entries);
+    const kept = <T>(list: readonly T[]): T[] => list.filter((_, row) => drop[row] === 0);
+    this.#sets = kept(this.#sets);
+    this.#rhs = kept(this.#rhs);
+    this.#terms = kept(this.#terms);
+    this.#idle = kept(this.#idle);
+    this.#rowsOf = this.#rowsOf.map(() => []);
+    this.#sets.forEach((set, row) => {
+      for (const v of set) this.#rowsOf[v].push(row);
+    });
+  }
+
+  #model() {
+    return {
+      ...stableSetModel(this.#weights.map((w) => w / this.#scale), [], false),
+      rows: rowsOfSets(this.#sets, this.#sets.map((_, row) => this.#fullRhs(row))),
+    };
+  }
+
+  #fullRhs(row: number): number {
+    return this.#terms[row] % 2 === 0 ? 1 : (this.#sets[row].length - 1) / 2;
+  }
+
+  #addRow(set: readonly number[], isClique: boolean): void {
+    const row = this.#sets.length;
+    this.#sets.push(set);
+    this.#terms.push(isClique ? this.#tree.clique(set) : this.#tree.oddCycle(set));
+    let rhs = this.#fullRhs(row);
+    for (const v of set) {
+      this.#rowsOf[v].push(row);
+      if (this.#state?.[v] === CHOSEN) rhs--;
+    }
+    this.#rhs.push(rhs);
+    this.#idle.push(0);
+  }
+
+  /** Solves the relaxation as it stands and computes the exact bound of its rounded multipliers. */
+  #evaluate(meter: Meter): Evaluation {
+    const { n } = this.#graph;
+    for (let v = 0; v < n; v++) {
+      this.#lower[v] = this.#state[v] === CHOSEN ? 1 : 0;
+      this.#upper[v] = this.#state[v] === OUT ? 0 : 1;
+    }
+    this.#relaxation.setBounds(this.#lower, this.#upper);
+    const point = this.#relaxation.solve(meter);
+    const D = this.denominator, load = this.#load, sum = new FractionSum(D);
+    const terms: number[] = [];
+    load.fill(0);
+    for (let row = 0; point !== undefined && row < this.#sets.length; row++) {
+      const multiplier = Math.round(point.multipliers[row] * this.#scale * D);
+      this.#idle[row] = multiplier > 0 ? 0 : this.#idle[row] + 1;
+      if (multiplier <= 0 || !this.#sets[row].some((v) => this.#state[v] === FREE)) continue;
+      terms.push(this.#terms[row], multiplier);
+      sum.add(multiplier * this.#rhs[row]);
+      for (const v of this.#sets[row]) load[v] += multiplier;
+    }
+    let exact = true;
+    for (let v = 0; v < n; v++) {
+      if (this.#state[v] !== FREE) continue;
+      if (load[v] > Number.MAX_SAFE_INTEGER) exact = false;
+      const room = D * this.#weights[v] - load[v];
+      if (room > 0) sum.add(room);
+    }
+    return { point, bound: exact ? this.#chosenWeight + sum.floor : Infinity, terms };
+  }
+
+  /** The vertex to branch on, or one of whose cases a trial has closed. */
+  #pick(
+    meter: Meter,
+    evaluation: Evaluation,
+  ): number | { on: number; closed: number; terms: number[] } {
+    const { n, offsets, targets } = this.#graph;
+    const { point } = evaluation;
+    const listed: { v: number; score: number }[] = [];
+    for (let v = 0; v < n; v++) {
+      if (this.#state[v] !== FREE) continue;
+      const x = point === undefined ? 0.5 : point.x[v];
+      if (x < 1e-6 || x > 1 - 1e-6) continue;
+      let heft = 0;
+      for (let a = offsets[v]; a < offsets[v + 1]; a++) {
+        if (this.#state[targets[a]] === FREE) heft += this.#weights[targets[a]];
+      }
+      const up = this.#cost(0, v, heft) * (1 - x), down = this.#cost(1, v, this.#weights[v]) * x;
+      listed.push({ v, score: Math.max(up, 1e-9) * Math.max(down, 1e-9) });
+    }
+    // The point is integral but the bound not closed (rounding, or HiGHS failed): any free vertex.
+    if (listed.length === 0) return this.#state.indexOf(FREE);
+    listed.sort((a, b) => b.score - a.score || a.v - b.v);
+    if (point === undefined) return listed[0].v;
+    let best = -1, bestScore = -1, misses = 0;
+    for (let i = 0; i < listed.length && i < CANDIDATES && misses < 4; i++) {
+      const { v, score } = listed[i];
+      let real = score;
+      if (Math.min(this.#trials[0][v], this.#trials[1][v]) < TRIALS) {
+        const trail = this.#trail.length;
+        this.#choose(v);
+        const chosen = this.#evaluate(meter);
+        this.#undo(trail);
+        if (chosen.bound <= this.bestWeight) return { on: v, closed: CHOSEN, terms: chosen.terms };
+        this.#leave(v);
+        const left = this.#evaluate(meter);
+        this.#undo(trail);
+        if (left.bound <= this.bestWeight) return { on: v, closed: OUT, terms: left.terms };
+        const losses = [chosen, left].map((e) =>
+          Math.max(0, point.value - (e.point?.value ?? point.value))
+        );
+        this.#learn(0, v, losses[0] / (1 - point.x[v]));
+        this.#learn(1, v, losses[1] / point.x[v]);
+        real = Math.max(losses[0], 1e-9) * Math.max(losses[1], 1e-9);
+      }
+      if (real > bestScore) {
+        [best, bestScore] = [v, real];
+        misses = 0;
+      } else misses++;
+    }
+    return best;
+  }
+
+  #cost(side: 0 | 1, v: number, guess: number): number {
+    const trials = this.#trials[side][v];
+    return trials > 0 ? this.#loss[side][v] / trials : guess / this.#scale / 4;
+  }
+
+  #learn(side: 0 | 1, v: number, loss: number): void {
+    this.#loss[side][v] += loss;
+    this.#trials[side][v]++;
+  }
+
+  /** Records a better stable set when the point is one; says whether it was integral. */
+  #takeIfIntegral(x: Float64Array): boolean {
+    const { n, offsets, targets } = this.#graph;
+    let weight = 0;
+    for (let v = 0; v < n; v++) {
+      if (x[v] > 1e-6 && x[v] < 1 - 1e-6) return false;
+      if (x[v] >= 0.5) weight += this.#weights[v];
+    }
+    if (weight <= this.bestWeight) return true;
+    for (let v = 0; v < n; v++) {
+      if (x[v] < 0.5) continue;
+      for (let a = offsets[v]; a < offsets[v + 1]; a++) if (x[targets[a]] >= 0.5) return false;
+    }
+    this.bestWeight = weight;
+    for (let v = 0; v < n; v++) this.bestChosen[v] = x[v] >= 0.5 ? 1 : 0;
+    return true;
+  }
+
+  /** Nothing is free: what is chosen is a stable set, and better than the best. */
+  #takeState(): void {
+    this.bestWeight = this.#chosenWeight;
+    for (let v = 0; v < this.#state.length; v++) {
+      this.bestChosen[v] = this.#state[v] === CHOSEN ? 1 : 0;
+    }
+  }
+
+  #choose(v: number): void {
+    const { offsets, targets } = this.#graph;
+    this.#state[v] = CHOSEN;
+    this.#trail.push(v);
+    this.#chosenWeight += this.#weights[v];
+    for (const row of this.#rowsOf[v]) this.#rhs[row]--;
+    for (let a = offsets[v]; a < offsets[v + 1]; a++) {
+      if (this.#state[targets[a]] === FREE) this.#leave(targets[a]);
+    }
+  }
+
+  #leave(v: number): void {
+    this.#state[v] = OUT;
+    this.#trail.push(v);
+  }
+
+  #undo(to: number): void {
+    while (this.#trail.length > to) {
+      const v = this.#trail.pop() as number;
+      if (this.#state[v] === CHOSEN) {
+        this.#chosenWeight -= this.#weights[v];
+        for (const row of this.#rowsOf[v]) this.#rhs[row]++;
+      }
+      this.#state[v] = FREE;
+    }
+  }
+}
