@@ -23,6 +23,7 @@
  * ```
  * @module
  */
+export { type ConflictPictureOptions, drawConflicts } from "./conflict-picture.ts";
 export { type DiscOptions, drawEmbedding } from "./disc.ts";
 export { Picture } from "./picture.ts";
 export { registerRenderers } from "./register.ts";
