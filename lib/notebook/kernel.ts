@@ -9,7 +9,7 @@ import type { MimeBundle } from "../run/displayable.ts";
 /** What this floor uses of `Deno.jupyter`. */
 export interface Kernel {
   /** Sends one message to the front end at once, even from a synchronous loop. */
-  broadcast(type: string, content: Record<string, unknown>): Promise<void>;
+  broadcast(type: string, content: Record<string, unknown>): void;
 }
 
 /**
@@ -41,6 +41,6 @@ export function settle(): Promise<void> {
 
 /** Sends one output to the front end and waits until it is out. */
 export async function display(to: Kernel, bundle: MimeBundle): Promise<void> {
-  await to.broadcast("display_data", { data: bundle, metadata: {}, transient: {} });
+  to.broadcast("display_data", { data: bundle, metadata: {}, transient: {} });
   await settle();
 }

@@ -56,13 +56,11 @@ export class ProgressLine {
   }
 
   #send(text: string, progress?: Progress): void {
-    // The promise is not awaited: the message is on its way when `broadcast` returns, and the run
-    // that reports is synchronous. A front end that has gone away is no reason to stop the run.
     this.#kernel.broadcast(this.#shown ? "update_display_data" : "display_data", {
       data: { "text/plain": text, "text/html": lineHtml(text, progress) },
       metadata: {},
       transient: { display_id: this.#id },
-    }).catch(() => {});
+    });
     this.#shown = true;
   }
 }

@@ -20,7 +20,6 @@ export async function inFakeKernel(body: () => unknown): Promise<Message[]> {
     broadcast(type: string, content: Record<string, unknown>) {
       const transient = content.transient as { display_id?: string } | undefined;
       messages.push({ type, data: content.data as MimeBundle, id: transient?.display_id });
-      return Promise.resolve();
     },
   };
   const scope = globalThis as { Deno?: object };
