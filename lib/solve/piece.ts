@@ -4,13 +4,16 @@
  * of work, then with the help of a floating-point solver's solutions, then until it is done.
  */
 import { Interrupted, type Meter } from "../run/meter.ts";
+import { branch } from "./branch.ts";
 import type { Declined, Engine, EngineName, Piece, Solved } from "./engine.ts";
 import { greedyPacking, greedyStableSet } from "./greedy.ts";
 import { solveBipartite } from "./bipartite.ts";
+import { solveByTransversal } from "./transversal.ts";
 
 /** The special engines, in the order in which they are asked. */
 const SPECIAL: readonly (readonly [EngineName, Engine])[] = [
   ["bipartite", solveBipartite],
+  ["transversal", solveByTransversal],
 ];
 
 export interface PieceResult {
@@ -42,6 +45,11 @@ export async function solvePiece(
     if (answer.status !== "declined") return { engine: name, why, solved: answer };
     why.push(`${name} declined: ${answer.reason}`);
   }
+  if (meter.interruption === undefined) {
+    if (only === undefined || only === "branch") {
+      return await byBranching(piece, meter, why);
+    }
+  }
   if (meter.interruption !== undefined) why.push(`the run ended (${meter.interruption})`);
   return { engine: "greedy", why, solved: greedily(piece) };
 }
@@ -58,6 +66,14 @@ async function asked(
     if (error instanceof Interrupted) return undefined;
     throw error;
   }
+}
+
+async function byBranching(
+  piece: Piece,
+  meter: Meter,
+  why: string[],
+): Promise<PieceResult> {
+  return { engine: "branch", why, solved: await branch(piece, meter) };
 }
 
 /** The greedy choice under the better of the half-integral bound and a greedy packing. */
