@@ -47,7 +47,7 @@ export interface CertificatePart {
   readonly proof: Proof;
 }
 
-export type Proof = PackingProof | CasesProof;
+export type Proof = PackingProof | CasesProof | BlocksProof;
 
 /**
  * A fractional packing of edges: one sum, rounded down. Proves w(S) - c(S) for Mᵀc <= w, and more
@@ -89,4 +89,56 @@ export interface CaseNode {
   readonly set?: Numbers;
   readonly on?: number;
   readonly split?: readonly Numbers[];
+}
+
+/**
+ * Bipartite blocks replaced by gadgets, and proofs for what is left. With slack y = 1 - Mx >= 0 and
+ * doubled edge costs c,
+ *
+ *     2·w(stable set within S) <= Σ_{v in S} max(0, 2w(v) - (Mᵀc)(v)) + c(E) - c·y.
+ *
+ * A block is a set of vertices whose neighbours outside are at most three attachments. A gadget may
+ * stand for it if in each state of the attachments that can occur its least slack cost is at most
+ * that of the block; then the least slack cost of the whole does not rise. In the end graph, with
+ * edges E* and costs c*, each vertex weighs the sum of the costs at it, so that its heaviest stable
+ * set weighs c*(E*) less the least slack cost; if the parts prove at most B for it, then
+ *
+ *     2·w(stable set within S) <= Σ_{v in S} max(0, 2w(v) - (Mᵀc)(v)) + c(E) - c*(E*) + B,
+ *
+ * and half of that is rounded down.
+ *
+ * Vertices are numbered anew: 0 … k-1 are the k vertices of S in increasing order, and k, k+1, … the
+ * vertices of the gadgets, block after block. All edges inside S are edges, those not listed with
+ * cost 0.
+ */
+export interface BlocksProof {
+  readonly rule: "blocks";
+  /** Length 2j: the ends of each edge with a cost, in the new numbers. */
+  readonly ends: Numbers;
+  /** Length j: the doubled costs, integers >= 0. */
+  readonly doubled: Numbers;
+  /** One after another, each in the graph that those before it leave. */
+  readonly blocks: readonly BlockReplacement[];
+  /**
+   * Disjoint parts of the end graph that hold all its vertices of positive weight, each with a bound
+   * in the weights of the end graph, which are sums of doubled costs.
+   */
+  readonly parts: readonly CertificatePart[];
+}
+
+/** One block and the gadget that stands for it; all vertices in the numbers of the proof. */
+export interface BlockReplacement {
+  /** The vertices that leave; they must induce a bipartite graph. */
+  readonly inside: Numbers;
+  /** At most three; all neighbours of the inside are inside or among them. */
+  readonly attachments: Numbers;
+  /** Number of new vertices, at most five. */
+  readonly vertices: number;
+  /**
+   * Length 2j: the ends of the gadget's edges, each an attachment or one of its new vertices. An edge
+   * between two attachments must be there already; its cost is added.
+   */
+  readonly ends: Numbers;
+  /** Length j: their doubled costs, integers >= 0. */
+  readonly doubled: Numbers;
 }

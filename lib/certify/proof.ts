@@ -1,4 +1,5 @@
 /** Sends a proof to the checker of its rule. */
+import { blocksBound } from "./blocks.ts";
 import { casesBound } from "./cases.ts";
 import type { Proof } from "./certificate.ts";
 import { packingBound } from "./packing.ts";
@@ -19,6 +20,8 @@ export function provenBound(play: Play, proof: Proof): bigint {
       return packingBound(play, proof);
     case "cases":
       return casesBound(play, proof);
+    case "blocks":
+      return blocksBound(play, proof);
     default:
       throw new Rejected(`unknown rule ${JSON.stringify((proof as { rule?: unknown })?.rule)}`);
   }

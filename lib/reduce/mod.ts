@@ -13,3 +13,5 @@
  * @module
  */
 export { type HalfIntegralKernel, halfIntegralKernel } from "./kernel.ts";
+export { liftBlocks, reduceBlocks, type Reduction } from "./blocks.ts";
+export { type KernelPiece, type ReducedPiece, reducePiece } from "./blocks-piece.ts";

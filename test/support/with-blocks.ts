@@ -47,8 +47,11 @@ export function withBlocks(random: Random, core: Graph, options: BlockOptions): 
     const size = 1 + random.below(options.size);
     const wanted = options.attachments ?? "any";
     const count = wanted === "any" ? random.below(4) : wanted;
-    const pool = Int32Array.from({ length: options.nested === true ? n : core.n }, (_, v) => v);
-    const attachments = Array.from(random.shuffle(pool).subarray(0, count));
+    const attachments: number[] = [];
+    while (attachments.length < count) {
+      const v = random.below(options.nested === true ? n : core.n);
+      if (!attachments.includes(v)) attachments.push(v);
+    }
     const inside = Array.from({ length: size }, (_, i) => n + i);
     const insideSide = inside.map(() => random.below(2));
     // A single vertex needs all attachments opposite to it.
