@@ -55,7 +55,7 @@ function shrink(skeleton: Skeleton, random: Random, meter: Meter): Skeleton | un
     return isPlanar(smaller.graph, meter) ? undefined : smaller;
   };
   const whole = compress(skeleton, new Uint8Array(m).fill(1));
-  if (whole.graph.m < m) return whole;
+  if (whole.graph.m < m || whole.graph.n < skeleton.graph.n) return whole;
 
   const orientation = orient(skeleton.graph, meter);
   const sides = decideSides(orientation, meter);
