@@ -1,7 +1,7 @@
 /** Conflicts between uses of one resource that overlap in time, by a sweep over the starts. */
 import { InstanceError } from "../run/errors.ts";
-import { type Conflict, type Row, shown } from "./item.ts";
-import { type Moment, type MomentScale, readMoment, SCALE_NAMES, stretch } from "./moment.ts";
+import { type Conflict, shown } from "./item.ts";
+import { type MomentScale, readMoment, SCALE_NAMES, stretch } from "./moment.ts";
 import { cell, type Column, columnName, ruleConflict, type RuleOptions, ruleRows } from "./rule.ts";
 
 /** What `overlapConflicts` takes beside the rows. */
@@ -36,45 +36,43 @@ export function overlapConflicts(rows: readonly object[], options: OverlapOption
     problems.push(`gap: expected a number >= 0, got ${shown(gap)}`);
   }
   const { list, ids, absent } = ruleRows(rows, options, [start, end, resource], problems);
-  const starts: Moment[] = [], ends: Moment[] = [];
+  const n = list.length;
+  const starts = new Float64Array(n), ends = new Float64Array(n);
   let scale: MomentScale | undefined, scaleRow = 0;
-  const moment = (row: Row, i: number, column: Column, what: string): Moment => {
-    const value = cell(row, column);
-    const read = readMoment(value);
+  const read = (i: number, column: Column, what: string): number => {
     const name = columnName(column, what);
-    if (absent.has(name) && typeof column === "string") return { at: 0, scale: "number", text: "" };
-    if (read === undefined) {
+    if (absent.has(name) && typeof column === "string") return 0;
+    const value = cell(list[i], column);
+    const moment = readMoment(value);
+    if (moment === undefined) {
       problems.push(
         `row ${i + 1} (${ids[i]}): ${name} ${shown(value)}; expected a number, a date or a time`,
       );
-      return { at: NaN, scale: "number", text: "" };
+      return NaN;
     }
-    if (scale === undefined) [scale, scaleRow] = [read.scale, i];
-    if (read.scale !== scale) {
-      problems.push(
-        `row ${i + 1} (${ids[i]}): ${name} ${shown(value)} is ${SCALE_NAMES[read.scale]}; ` +
-          `expected ${SCALE_NAMES[scale]}, as in row ${scaleRow + 1}`,
-      );
-      return { at: NaN, scale, text: "" };
-    }
-    return read;
+    if (scale === undefined) [scale, scaleRow] = [moment.scale, i];
+    if (moment.scale === scale) return moment.at;
+    problems.push(
+      `row ${i + 1} (${ids[i]}): ${name} ${shown(value)} is ${SCALE_NAMES[moment.scale]}; ` +
+        `expected ${SCALE_NAMES[scale]}, as in row ${scaleRow + 1}`,
+    );
+    return NaN;
   };
-  for (let i = 0; i < list.length; i++) {
-    starts.push(moment(list[i], i, start, "start"));
-    ends.push(moment(list[i], i, end, "end"));
-    if (ends[i].at < starts[i].at) {
+  for (let i = 0; i < n; i++) {
+    starts[i] = read(i, start, "start");
+    ends[i] = read(i, end, "end");
+    if (ends[i] < starts[i]) {
       problems.push(
-        `row ${i + 1} (${ids[i]}): ends at ${ends[i].text}, before it starts at ` +
-          `${starts[i].text}; expected an end not before the start`,
+        `row ${i + 1} (${ids[i]}): ends at ${text(i, end)}, before it starts at ` +
+          `${text(i, start)}; expected an end not before the start`,
       );
     }
   }
   if (problems.length > 0) throw new InstanceError(problems);
 
   const used = list.map((row) => resource === undefined ? "" : resourceKey(cell(row, resource)));
-  const order = Array.from(list.keys()).sort((i, j) =>
-    starts[i].at - starts[j].at || ends[i].at - ends[j].at || i - j
-  );
+  const order = Int32Array.from(starts, (_, i) => i)
+    .sort((i, j) => starts[i] - starts[j] || ends[i] - ends[j] || i - j);
   const conflicts: Conflict[] = [];
   /** Rows of each resource that were in use when the sweep last met it. */
   const open = new Map<string, number[]>();
@@ -86,9 +84,9 @@ export function overlapConflicts(rows: readonly object[], options: OverlapOption
     }
     let kept = 0;
     for (const i of rivals) {
-      if (starts[j].at >= ends[i].at + gap) continue;
+      if (starts[j] >= ends[i] + gap) continue;
       rivals[kept++] = i;
-      if (starts[i].at >= ends[j].at + gap) continue;
+      if (starts[i] >= ends[j] + gap) continue;
       conflicts.push(ruleConflict(list, ids, i, j, options, () => wording(i, j)));
     }
     rivals.length = kept;
@@ -96,13 +94,17 @@ export function overlapConflicts(rows: readonly object[], options: OverlapOption
   }
   return conflicts;
 
+  function text(i: number, column: Column): string {
+    return readMoment(cell(list[i], column))?.text ?? "";
+  }
+
   function wording(i: number, j: number): string {
-    const earlier = ends[i].at <= ends[j].at ? ends[i] : ends[j];
-    const from = starts[j].text, to = earlier.text;
+    const earlier = ends[i] <= ends[j] ? i : j;
+    const from = text(j, start), to = text(earlier, end);
     const what = resource === undefined
       ? ""
       : ` ${typeof resource === "string" ? `${resource} ` : ""}${String(cell(list[i], resource))}`;
-    if (starts[j].at < earlier.at) {
+    if (starts[j] < ends[earlier]) {
       return what === ""
         ? `overlap between ${from} and ${to}`
         : `share${what} between ${from} and ${to}`;
