@@ -2,7 +2,7 @@
  * The odd kernel of a graph: what is left for questions about odd cycles once trees, chains of
  * vertices of degree two and parallel ways of equal parity are out of the way. Near-linear time.
  *
- * Edges are *odd* or *even*; in the graph that comes in all are odd. Four steps, until none applies:
+ * Edges are *odd* or *even*; in the graph of an instance all are odd. Four steps, until none applies:
  * a vertex of degree at most one goes; a vertex of degree two is suppressed, its two edges becoming
  * one whose parity is their sum; of parallel edges with equal parity one stays; and where a
  * suppression would make an odd loop at a vertex, that vertex is *forced*: an odd cycle hangs on it
@@ -38,13 +38,41 @@ export interface OddKernel {
 /**
  * Reduces a graph to its odd kernel.
  *
- * @param whole any graph, all edges odd
- * @param keep length n; vertices with 0 are left out (default: none)
+ * @param whole any graph
  * @param meter counts about one unit for each arc
+ * @param keep length n; vertices with 0 are left out (default: none)
+ * @param even length m, nonzero where an edge is even; absent: every edge is odd
  * @returns the kernel with the way back. O(n + m) expected time.
  */
-export function oddKernel(whole: Graph, meter: Meter, keep?: Uint8Array): OddKernel {
-  return new Reduction(whole, meter, keep).run();
+export function oddKernel(
+  whole: Graph,
+  meter: Meter,
+  keep?: Uint8Array,
+  even?: Uint8Array,
+): OddKernel {
+  return new Reduction(whole, meter, keep, even).run();
+}
+
+/**
+ * The graph with each even edge cut in two by a vertex of its own, so that all edges are odd.
+ *
+ * @param even length m, nonzero where an edge is even
+ * @returns a graph whose first n vertices are those of `graph`; simple where no two parallel edges
+ *   of `graph` have the same parity
+ */
+export function allOdd(graph: Graph, even: Uint8Array): Graph {
+  const tails: number[] = [], heads: number[] = [];
+  let n = graph.n;
+  for (let e = 0; e < graph.m; e++) {
+    if (even[e] === 0) {
+      tails.push(graph.tails[e]);
+      heads.push(graph.heads[e]);
+    } else {
+      tails.push(graph.tails[e], n);
+      heads.push(n++, graph.heads[e]);
+    }
+  }
+  return graphFromEdges(n, Int32Array.from(tails), Int32Array.from(heads));
 }
 
 /** The vertices of a closed walk along edges of the kernel, in the whole graph. */
@@ -91,7 +119,12 @@ class Reduction {
   readonly #mask: number;
   readonly #slot: Int32Array;
 
-  constructor(whole: Graph, meter: Meter, keep: Uint8Array | undefined) {
+  constructor(
+    whole: Graph,
+    meter: Meter,
+    keep: Uint8Array | undefined,
+    even: Uint8Array | undefined,
+  ) {
     const { n, m } = whole;
     const room = 2 * m;
     this.#n = n;
@@ -115,7 +148,8 @@ class Reduction {
     if (keep !== undefined) { for (let v = 0; v < n; v++) if (keep[v] === 0) this.#gone[v] = 1; }
     for (let e = 0; e < m; e++) {
       if (this.#gone[whole.tails[e]] !== 0 || this.#gone[whole.heads[e]] !== 0) continue;
-      this.#join(whole.tails[e], whole.heads[e], 1, 1, -1, -1, -1);
+      const odd = even !== undefined && even[e] !== 0 ? 0 : 1;
+      this.#join(whole.tails[e], whole.heads[e], odd, 1, -1, -1, -1);
     }
     meter.tick(2 * m);
     for (let v = n - 1; v >= 0; v--) if (this.#degree[v] <= 2) this.#queue.push(v);

@@ -75,7 +75,7 @@ export function leastTransversal(
   const cycles = kernel.forced.map((f) => f.cycle);
   const vertices = kernel.forced.map((f) => f.vertex);
   const parts = componentSubgraphs(kernel.graph).map((part) =>
-    new Part(part.graph, part.edges, part.vertices, kernel)
+    new Part(part.graph, Uint8Array.from(part.edges, (e) => kernel.even[e]), part)
   );
   let stopped: Transversal["stopped"];
   let lower = kernel.forced.length;
@@ -100,12 +100,12 @@ export function leastTransversal(
     lower = kernel.forced.length + parts.reduce((sum, part) => sum + part.lower, 0);
   }
   for (const part of parts) {
-    for (const v of part.best) vertices.push(kernel.vertices[part.vertices[v]]);
+    for (const v of part.best) vertices.push(kernel.vertices[part.whole.vertices[v]]);
     for (const c of part.cycles) {
       cycles.push(expandCycle(
         kernel,
-        c.vertices.map((v) => part.vertices[v]),
-        c.edges.map((e) => part.edges[e]),
+        c.vertices.map((v) => part.whole.vertices[v]),
+        c.edges.map((e) => part.whole.edges[e]),
       ));
     }
   }
@@ -118,20 +118,34 @@ export function leastTransversal(
   return stopped === undefined ? found : { ...found, stopped };
 }
 
+/**
+ * The same for one component of an odd kernel, with vertices numbered as there.
+ *
+ * @param graph a component of an odd kernel
+ * @param even length m, nonzero where an edge is even
+ * @param limit stop once it is proved that more than so many vertices are needed
+ * @returns a lower bound, and a transversal that meets it unless the bound is above the limit
+ * @throws {Interrupted} when the meter runs out
+ */
+export function transversalWithin(
+  graph: Graph,
+  even: Uint8Array,
+  limit: number,
+  meter: Meter,
+): { lower: number; best: readonly number[]; cycles: readonly OddCycle[] } {
+  const part = new Part(graph, even, undefined);
+  part.bound(meter);
+  part.close(meter, limit);
+  return part;
+}
+
 /** One component of the kernel. */
-class Part {
+class Part<Whole> {
   lower = 0;
   best: number[];
   cycles: OddCycle[] = [];
-  readonly even: Uint8Array;
 
-  constructor(
-    readonly graph: Graph,
-    readonly edges: Int32Array,
-    readonly vertices: Int32Array,
-    kernel: OddKernel,
-  ) {
-    this.even = Uint8Array.from(edges, (e) => kernel.even[e]);
+  constructor(readonly graph: Graph, readonly even: Uint8Array, readonly whole: Whole) {
     this.best = Array.from({ length: graph.n }, (_, v) => v);
   }
 
