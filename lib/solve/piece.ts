@@ -1,9 +1,11 @@
 /**
- * Chooses the engine for one connected piece. The cheap special engines come first and decline with
+ * Solves one connected piece: bipartite blocks are replaced by gadgets, then each piece that is left
+ * goes to the first engine that takes it. The cheap special engines come first and decline with
  * a reason where they do not apply; branch and bound takes what is left, first alone under a budget
  * of work, then with the help of a floating-point solver's solutions, then until it is done.
  */
-import { Interrupted, type Meter } from "../run/meter.ts";
+import { type CombinedAnswer, type ReducedPiece, reducePiece } from "../reduce/blocks-piece.ts";
+import { Interrupted, Meter } from "../run/meter.ts";
 import { branch } from "./branch.ts";
 import type { Declined, Engine, EngineName, Piece, Solved } from "./engine.ts";
 import { greedyPacking, greedyStableSet } from "./greedy.ts";
@@ -32,6 +34,57 @@ export interface PieceResult {
  * @returns the solution, the engine it came from, and what each engine said
  */
 export async function solvePiece(
+  piece: Piece,
+  only: EngineName | undefined,
+  meter: Meter,
+): Promise<PieceResult> {
+  const reduced = withoutBlocks(piece, meter);
+  if (reduced === undefined) return await byEngines(piece, only, meter);
+  const { pieces, figures } = reduced;
+  const results: PieceResult[] = [];
+  // The smaller pieces count in half units and from another zero: their bounds are not reported.
+  const reporting = meter.reporting(({ phase, done, total, elapsedMs }) => (
+    { phase, done, total, elapsedMs }
+  ));
+  for (const smaller of pieces) results.push(await byEngines(smaller, only, reporting));
+  // Lifting is as cheap as the tables were, and must happen even when the time is up.
+  const { status, ...combined } = withStatus(
+    reduced.combine(results.map((r) => r.solved), new Meter()),
+  );
+  const engines = [...new Set(results.map((r) => r.engine))];
+  return {
+    engine: engines.length === 0 ? "blocks" : engines.join(" + "),
+    why: [
+      `${figures.blocks} bipartite blocks replaced: ${figures.verticesLeft} vertices left of ` +
+      `${piece.graph.n}`,
+      ...new Set(results.flatMap((r) => r.why)),
+    ],
+    solved: {
+      ...combined,
+      status,
+      figures: Object.assign({ ...figures }, ...results.map((r) => r.solved.figures)),
+    },
+  };
+}
+
+/** The piece with its blocks replaced, where that makes it smaller and the time allows it. */
+function withoutBlocks(piece: Piece, meter: Meter): ReducedPiece | undefined {
+  const { doubledCosts } = piece;
+  if (doubledCosts === undefined) return undefined;
+  try {
+    return reducePiece({ ...piece, doubledCosts }, meter);
+  } catch (error) {
+    if (error instanceof Interrupted) return undefined;
+    throw error;
+  }
+}
+
+function withStatus(answer: CombinedAnswer): CombinedAnswer & { status: Solved["status"] } {
+  return { ...answer, status: answer.proof === undefined ? "feasible" : "optimal" };
+}
+
+/** Asks the engines in turn. */
+async function byEngines(
   piece: Piece,
   only: EngineName | undefined,
   meter: Meter,
