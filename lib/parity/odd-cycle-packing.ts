@@ -62,7 +62,7 @@ export function oddCyclePacking(
     answer = twoDisjointOddCycles(graph, meter);
     if (answer.exist === undefined) return { ...found, because: answer.because };
     if (!answer.exist) return { ...found, upper: 1, because: answer.because };
-    const pair = oddCyclePair(graph, meter);
+    const pair = oddCyclePair(graph, meter, transversal.vertices);
     return { ...found, lower: 2, cycles: pair, because: answer.because };
   } catch (error) {
     if (!(error instanceof Interrupted)) throw error;

@@ -19,11 +19,17 @@ const QUICK_SCANS = 50_000_000;
  * A quick look for two disjoint odd cycles; finds them in most graphs that have them.
  *
  * @param graph any graph, all edges odd
+ * @param hints vertices to look at first, such as a transversal: one of two disjoint odd cycles
+ *   passes through some of them
  * @returns two of them, or undefined: none were seen. At most about 5·10^7 arcs are scanned, or 20
  *   times each arc.
  * @throws {Interrupted} when the meter runs out
  */
-export function glimpseOddCyclePair(graph: Graph, meter: Meter): OddCyclePair | undefined {
+export function glimpseOddCyclePair(
+  graph: Graph,
+  meter: Meter,
+  hints: ArrayLike<number> = [],
+): OddCyclePair | undefined {
   const kernel = oddKernel(graph, meter);
   const { graph: small, even, forced } = kernel;
   const expanded = (c: OddCycle): Int32Array => expandCycle(kernel, c.vertices, c.edges);
@@ -34,12 +40,20 @@ export function glimpseOddCyclePair(graph: Graph, meter: Meter): OddCyclePair | 
   }
   const keep = new Uint8Array(small.n).fill(1);
   const size = small.n + 2 * small.m;
-  const roots = Math.min(small.n, Math.max(20, Math.floor(QUICK_SCANS / (4 * size + 1))));
+  const count = Math.min(small.n, Math.max(20, Math.floor(QUICK_SCANS / (4 * size + 1))));
+  const hinted = new Set(Array.from(hints));
+  const roots: number[] = [];
+  for (let v = 0; v < small.n; v++) if (hinted.has(kernel.vertices[v])) roots.push(v);
+  roots.length = Math.min(roots.length, count);
+  // From a hint, the walk does not pass the other hints: these are left for the second cycle.
+  const allowed = new Uint8Array(small.n).fill(1), all = allowed.slice();
+  for (const v of roots) allowed[v] = 0;
+  const ownHints = roots.length;
+  for (let i = 0; i < count; i++) roots.push(Math.floor((i * small.n) / count));
   const walker = new ShortestOddWalk(small, even);
-  for (let i = 0; i < roots; i++) {
-    const root = Math.floor((i * small.n) / roots);
+  for (const [i, root] of roots.entries()) {
     meter.tick(4 * size);
-    const first = walker.through(root);
+    const first = walker.through(root, i < ownHints ? allowed : all);
     if (first === undefined) continue;
     for (const v of first.vertices) keep[v] = 0;
     const { oddCycle } = balance(small, even, keep);
@@ -53,13 +67,18 @@ export function glimpseOddCyclePair(graph: Graph, meter: Meter): OddCyclePair | 
  * Finds two disjoint odd cycles in a graph that has them.
  *
  * @param graph a graph for which `twoDisjointOddCycles` answers yes
+ * @param hints vertices to look at first
  * @returns two disjoint odd cycles. Beyond the quick look, O(k log m) decisions for cycles of k
  *   edges together.
  * @throws {Interrupted} when the meter runs out
  */
-export function oddCyclePair(graph: Graph, meter: Meter): OddCyclePair {
+export function oddCyclePair(
+  graph: Graph,
+  meter: Meter,
+  hints: ArrayLike<number> = [],
+): OddCyclePair {
   let edges = Int32Array.from({ length: graph.m }, (_, e) => e);
-  let pair = glimpseOddCyclePair(graph, meter);
+  let pair = glimpseOddCyclePair(graph, meter, hints);
   for (let chunk = Math.ceil(edges.length / 2); pair === undefined; chunk = Math.ceil(chunk / 2)) {
     for (let at = 0; pair === undefined && at < edges.length;) {
       const fewer = new Int32Array(edges.length - Math.min(chunk, edges.length - at));
@@ -68,7 +87,7 @@ export function oddCyclePair(graph: Graph, meter: Meter): OddCyclePair {
       const part = withEdges(graph, fewer);
       if (twoDisjointOddCycles(part, meter).exist === true) {
         edges = fewer;
-        pair = glimpseOddCyclePair(part, meter);
+        pair = glimpseOddCyclePair(part, meter, hints);
       } else at += chunk;
     }
     if (chunk === 1 && pair === undefined) {
@@ -96,8 +115,12 @@ class ShortestOddWalk {
     this.#queue = new Int32Array(2 * graph.n);
   }
 
-  /** A simple odd cycle on a shortest odd closed walk through a vertex. */
-  through(root: number): OddCycle | undefined {
+  /**
+   * A simple odd cycle on a shortest odd closed walk through a vertex.
+   *
+   * @param allowed length n: 0 for vertices, other than the root, that the walk must not pass
+   */
+  through(root: number, allowed: Uint8Array): OddCycle | undefined {
     const { offsets, targets, edgeOf, tails, heads } = this.graph;
     const parentEdge = this.#parentEdge.fill(-1), queue = this.#queue;
     let head = 0, tail = 0;
@@ -108,6 +131,7 @@ class ShortestOddWalk {
         const e = edgeOf[a];
         const y = 2 * targets[a] + ((x & 1) ^ (this.even[e] === 0 ? 1 : 0));
         if (y === 2 * root || parentEdge[y] >= 0) continue;
+        if (allowed[targets[a]] === 0 && targets[a] !== root) continue;
         parentEdge[y] = e;
         queue[tail++] = y;
       }
