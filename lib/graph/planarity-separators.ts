@@ -33,9 +33,16 @@ export interface CutOff {
  * @param next length 2m, a rotation system of genus 0
  * @param faces its faces
  * @param meter counts about eight units for each edge
+ * @param among length faces.count; only pairs of faces not marked 0 are looked at (default: all)
  * @returns the parts, largest first
  */
-export function cutOffParts(graph: Graph, next: Int32Array, faces: Faces, meter: Meter): CutOff {
+export function cutOffParts(
+  graph: Graph,
+  next: Int32Array,
+  faces: Faces,
+  meter: Meter,
+  among?: Uint8Array,
+): CutOff {
   const { n, m } = graph;
   const potential = cornerPotential(next);
   meter.tick(4 * m);
@@ -44,13 +51,16 @@ export function cutOffParts(graph: Graph, next: Int32Array, faces: Faces, meter:
   // dart d starts to the face on its left, and lies between d and next[d].
   const nodes = n + faces.count;
   const row = new Int32Array(nodes + 1);
+  const skipped = (d: number) => among !== undefined && among[faces.of[d]] === 0;
   for (let d = 0; d < 2 * m; d++) {
+    if (skipped(d)) continue;
     row[dartStart(graph, d) + 1]++;
     row[n + faces.of[d] + 1]++;
   }
   for (let x = 0; x < nodes; x++) row[x + 1] += row[x];
-  const corners = new Int32Array(4 * m), fill = row.slice(0, nodes);
+  const corners = new Int32Array(row[nodes]), fill = row.slice(0, nodes);
   for (let d = 0; d < 2 * m; d++) {
+    if (skipped(d)) continue;
     corners[fill[dartStart(graph, d)]++] = d;
     corners[fill[n + faces.of[d]]++] = d;
   }

@@ -11,9 +11,16 @@
  * of the edges. The piece in the middle has one embedding up to reflection; the rest may be chosen
  * freely on one side and mirrored on the other. Near-linear time.
  */
-import { dartStart, type Faces, mirrored, traceFaces } from "../graph/embedding.ts";
+import {
+  dartStart,
+  eulerGenus,
+  type Faces,
+  isRotationSystem,
+  mirrored,
+  traceFaces,
+} from "../graph/embedding.ts";
 import type { Graph } from "../graph/graph.ts";
-import { cutOffParts } from "../graph/planarity-separators.ts";
+import { type CutOff, cutOffParts } from "../graph/planarity-separators.ts";
 import type { Meter } from "../run/meter.ts";
 
 /** Whether swapping the sheets (dart d ^ 2) mirrors the rotation system. Linear time. */
@@ -53,14 +60,49 @@ export function vertexOfAllOddCycles(cover: Graph, faces: Faces): number {
 /**
  * Mirrors what hangs behind two vertices so that it is embedded as its twin is.
  *
- * @param cover the double cover of a 2-connected graph that is not bipartite
+ * @param cover the double cover of a 2-connected graph that is not bipartite and in which no vertex
+ *   meets all odd cycles
  * @param coverNext length 4m, a planar rotation system of it
- * @param meter counts about ten units for each edge of the cover
- * @returns another planar rotation system. It is antipodal if any is, provided that no vertex meets
- *   all odd cycles; otherwise it may be no rotation system at all, so check.
+ * @param meter counts about twenty units for each edge of the cover
+ * @returns an antipodal planar rotation system; undefined if there is none
  */
-export function mirrorTwins(cover: Graph, coverNext: Int32Array, meter: Meter): Int32Array {
-  const parts = cutOffParts(cover, coverNext, traceFaces(coverNext), meter);
+export function mirrorTwins(
+  cover: Graph,
+  coverNext: Int32Array,
+  meter: Meter,
+): Int32Array | undefined {
+  const faces = traceFaces(coverNext);
+  const suspect = suspectFaces(coverNext, faces);
+  // Where the embedding is antipodal already nothing has to be turned; so look at the other faces
+  // first. What decides in the end is the search through all faces.
+  for (const among of suspect.indexOf(0) < 0 ? [undefined] : [suspect, undefined]) {
+    const parts = cutOffParts(cover, coverNext, faces, meter, among);
+    const next = turned(cover, coverNext, parts, meter);
+    if (isAntipodal(next) && isRotationSystem(cover, next) && eulerGenus(cover, next) === 0) {
+      return next;
+    }
+  }
+  return undefined;
+}
+
+/** Length faces.count: 1 for faces whose image under the swap is not the mirror image of a face. */
+function suspectFaces(coverNext: Int32Array, faces: Faces): Uint8Array {
+  const suspect = new Uint8Array(faces.count);
+  for (let d = 0; d < coverNext.length; d++) {
+    const c = coverNext[d];
+    if (coverNext[c ^ 2] === (d ^ 2)) continue;
+    suspect[faces.of[d]] = suspect[faces.of[c ^ 2]] = 1; // the corners d, c and their images
+  }
+  return suspect;
+}
+
+/** The rotation system with all largest parts mirrored; nonsense if parts and twins overlap. */
+function turned(
+  cover: Graph,
+  coverNext: Int32Array,
+  parts: CutOff,
+  meter: Meter,
+): Int32Array {
   const next = coverNext.slice(), prev = mirrored(coverNext);
   const claimed = new Uint8Array(cover.m); // edges of parts dealt with, and of their twins
   const entered = new Uint8Array(cover.n);

@@ -17,11 +17,12 @@
  *
  * An embedding is verified on the whole cover before it is returned, whatever the path to it.
  */
-import { eulerGenus, isRotationSystem, traceFaces } from "../graph/embedding.ts";
+import { isRotationSystem, signedEulerGenus, traceFaces } from "../graph/embedding.ts";
 import { type Graph, graphFromEdges, type Subgraph } from "../graph/graph.ts";
 import type { Kuratowski } from "../graph/kuratowski.ts";
 import { extractKuratowski } from "../graph/kuratowski-extract.ts";
 import { planarRotation } from "../graph/planarity.ts";
+import { breadthFirst, isScattered } from "../graph/relabel.ts";
 import { twoColouring } from "../graph/two-colouring.ts";
 import type { Meter } from "../run/meter.ts";
 import { doubleCover, liftDart, liftRotation } from "./double-cover.ts";
@@ -59,71 +60,79 @@ export function evenFaceEmbedding(
   meter: Meter,
   options: EvenFaceOptions = {},
 ): EvenFaceResult {
+  // Work where neighbours are near in memory; the answer is in the caller's numbers.
+  const local = isScattered(graph) ? breadthFirst(graph) : whole(graph);
+  const answer = embed(local.graph, meter);
+  if (answer.kind === "embedded") {
+    const next = translatedRotation(answer.next, local);
+    // The signature says that the cover is this rotation and its mirror image; so the cover lies in
+    // the sphere exactly if H lies in the projective plane.
+    const twisted = new Uint8Array(graph.m).fill(1);
+    meter.tick(8 * graph.m);
+    if (!isRotationSystem(graph, next) || signedEulerGenus(graph, { next, twisted }) !== 1) {
+      throw new Error("the embedding found is not an even-face embedding");
+    }
+    return { kind: "embedded", next, cover: doubleCover(graph), coverNext: liftRotation(next) };
+  }
+  const { reason, culprit } = answer;
+  if (culprit === undefined || options.witness === false) return { kind: "no", reason };
+  const found = extractKuratowski(doubleCover(culprit.graph), meter);
+  return { kind: "no", reason, kuratowski: translated(translated(found, culprit), local) };
+}
+
+/** A rotation system of the graph; or the reason, with a part whose cover is not planar. */
+type Found =
+  | { readonly kind: "embedded"; readonly next: Int32Array }
+  | { readonly kind: "no"; readonly reason: NoEvenFaceReason; readonly culprit?: Subgraph };
+
+function embed(graph: Graph, meter: Meter): Found {
   const blocks = oddBlocks(graph, meter);
-  if (blocks.components !== 1) return no("not connected");
-  if (blocks.odd.length === 0) return no("bipartite");
+  if (blocks.components !== 1) return { kind: "no", reason: "not connected" };
+  if (blocks.odd.length === 0) return { kind: "no", reason: "bipartite" };
   if (blocks.odd.length > 1) {
     const v = blocks.shared;
     const side = v < 0 ? undefined : sidesWithout(graph, v);
-    if (side === undefined) return no("odd cycles in separate blocks");
-    const next = embedThroughVertex(graph, v, side, meter);
-    return next === undefined ? notPlanar(whole(graph)) : embedded(next);
+    if (side === undefined) return { kind: "no", reason: "odd cycles in separate blocks" };
+    return orCulprit(embedThroughVertex(graph, v, side, meter), whole(graph));
   }
-
   const inCore = new Uint8Array(graph.m);
   for (let e = 0; e < graph.m; e++) inCore[e] = blocks.blockOf[e] === blocks.odd[0] ? 1 : 0;
-  const all = inCore.indexOf(0) < 0;
-  const core = all ? whole(graph) : edgeSubgraph(graph, inCore, 1);
-  const coreNext = embedCore(core.graph);
-  if (typeof coreNext === "string") {
-    return coreNext === "cover not planar" ? notPlanar(core) : no(coreNext);
-  }
-  if (all) return embedded(coreNext);
+  if (inCore.indexOf(0) < 0) return embedCore(whole(graph), meter);
+  const core = edgeSubgraph(graph, inCore, 1);
+  const found = embedCore(core, meter);
+  if (found.kind === "no") return found;
   const rest = edgeSubgraph(graph, inCore, 0);
   const restNext = planarRotation(rest.graph, meter);
-  if (restNext === undefined) return notPlanar(rest);
-  return embedded(hangOn(graph, core, coreNext, rest, restNext));
+  if (restNext === undefined) return orCulprit(undefined, rest);
+  return { kind: "embedded", next: hangOn(graph, core, found.next, rest, restNext) };
+}
 
-  function no(reason: NoEvenFaceReason): EvenFaceResult {
-    return { kind: "no", reason };
-  }
-
-  function notPlanar(part: Subgraph): EvenFaceResult {
-    const reason = "cover not planar";
-    if (options.witness === false) return { kind: "no", reason };
-    const found = extractKuratowski(doubleCover(part.graph), meter);
-    return { kind: "no", reason, kuratowski: translated(found, part) };
-  }
-
-  function embedded(next: Int32Array): EvenFaceResult {
-    const cover = doubleCover(graph), coverNext = liftRotation(next);
-    if (!isRotationSystem(cover, coverNext) || eulerGenus(cover, coverNext) !== 0) {
-      throw new Error("the embedding found is not an even-face embedding");
+/** Embeds a 2-connected graph that is not bipartite, or says why not. */
+function embedCore(core: Subgraph, meter: Meter): Found {
+  const { graph } = core;
+  const cover = doubleCover(graph);
+  let coverNext = planarRotation(cover, meter);
+  if (coverNext === undefined) return orCulprit(undefined, core);
+  if (!isAntipodal(coverNext)) {
+    const v = vertexOfAllOddCycles(cover, traceFaces(coverNext));
+    const side = v < 0 ? undefined : sidesWithout(graph, v);
+    if (side !== undefined) {
+      return orCulprit(embedThroughVertex(graph, v, side, meter), core);
     }
-    return { kind: "embedded", next, cover, coverNext };
+    coverNext = mirrorTwins(cover, coverNext, meter);
+    if (coverNext === undefined) return { kind: "no", reason: "orientation kept" };
   }
+  const next = new Int32Array(2 * graph.m);
+  for (let d = 0; d < next.length; d++) {
+    const c = coverNext[liftDart(d, 0)];
+    next[d] = ((c >> 2) << 1) | (c & 1);
+  }
+  return { kind: "embedded", next };
+}
 
-  /** Embeds a 2-connected graph that is not bipartite, or says why not. */
-  function embedCore(core: Graph): Int32Array | NoEvenFaceReason {
-    const cover = doubleCover(core);
-    let coverNext = planarRotation(cover, meter);
-    if (coverNext === undefined) return "cover not planar";
-    if (!isAntipodal(coverNext)) {
-      const v = vertexOfAllOddCycles(cover, traceFaces(coverNext));
-      const side = v < 0 ? undefined : sidesWithout(core, v);
-      if (side !== undefined) {
-        return embedThroughVertex(core, v, side, meter) ?? "cover not planar";
-      }
-      coverNext = mirrorTwins(cover, coverNext, meter);
-      if (!isAntipodal(coverNext)) return "orientation kept";
-    }
-    const next = new Int32Array(2 * core.m);
-    for (let d = 0; d < next.length; d++) {
-      const c = coverNext[liftDart(d, 0)];
-      next[d] = ((c >> 2) << 1) | (c & 1);
-    }
-    return next;
-  }
+function orCulprit(next: Int32Array | undefined, culprit: Subgraph): Found {
+  if (next === undefined) return { kind: "no", reason: "cover not planar", culprit };
+  return { kind: "embedded", next };
 }
 
 /** A two-colouring of the graph without v, or undefined. */
@@ -161,6 +170,16 @@ function edgeSubgraph(graph: Graph, marks: Uint8Array, mark: number): Subgraph {
     vertices,
     edges,
   };
+}
+
+/** A rotation system of a part with all edges, in the numbers of the whole. */
+function translatedRotation(next: Int32Array, part: Subgraph): Int32Array {
+  const { edges } = part;
+  const moved = new Int32Array(next.length);
+  for (let d = 0; d < next.length; d++) {
+    moved[2 * edges[d >> 1] + (d & 1)] = 2 * edges[next[d] >> 1] + (next[d] & 1);
+  }
+  return moved;
 }
 
 /** A subdivision in the cover of a part, in the cover of the whole. */
