@@ -5,15 +5,11 @@
  * 1975). Costs one maximum flow, everything else is O(n + m); no recursion.
  */
 import type { Graph } from "../graph/graph.ts";
-import {
-  type ExtremeCuts,
-  extremeCuts,
-  raiseToMaximum,
-  type TransportFlow,
-  type TransportNetwork,
-} from "../graph/max-flow-bipartite.ts";
+import { raiseToMaximum } from "../graph/max-flow-cover.ts";
+import { extremeCuts, residualComponents } from "../graph/max-flow-cover-cuts.ts";
 import type { Meter } from "../run/meter.ts";
-import { doubledCostsOf, relaxationOf } from "./relaxation.ts";
+import { BOTH, doubledCostsOf, LEFT_ONLY, relaxationOf, RIGHT_ONLY } from "./relaxation.ts";
+import { startSymmetric } from "./relaxation-start.ts";
 
 /** An optimum of the relaxation with its dual. */
 export interface HalfIntegralKernel {
@@ -43,109 +39,29 @@ export function halfIntegralKernel(
   meter: Meter,
 ): HalfIntegralKernel {
   const relaxation = relaxationOf(graph, weights, meter);
-  const { network, state, leftOf, rightOf } = relaxation;
+  const { network, state, order, copies } = relaxation;
+  startSymmetric(relaxation, meter);
   raiseToMaximum(network, state, meter);
   const cuts = extremeCuts(network, state, meter);
-  const { left, right } = strongComponents(network, state, cuts, meter);
+  const keep = copies.map((c) => c === BOTH ? 1 : 0);
+  const { left, right } = residualComponents(network, state, cuts, keep, meter);
   const value = new Uint8Array(graph.n);
-  for (let v = 0; v < graph.n; v++) {
-    const i = leftOf[v], j = rightOf[v];
-    if (i < 0) {
-      value[v] = cuts.right[j] === 1 ? 0 : 2;
-    } else if (j < 0) {
-      value[v] = cuts.left[i] === 1 ? 2 : 0;
-    } else if (cuts.left[i] !== 0) {
-      value[v] = cuts.left[i] === 1 ? 2 : 0;
-    } else if (left[i] !== right[j]) {
-      // Components are numbered against the direction of the residual arcs, so the set of nodes with
-      // a lower number than their mirror image has no arc out of it: it is a minimum cut.
-      value[v] = left[i] < right[j] ? 2 : 0;
-    } else value[v] = 1;
+  for (let i = 0; i < graph.n; i++) {
+    // A minimum cut chooses a vertex when its left copy is on the source side, and leaves it when its
+    // right copy is; both or neither make a half.
+    let x: number;
+    if (copies[i] === RIGHT_ONLY) x = cuts.right[i] === 1 ? 0 : 2;
+    else if (copies[i] === LEFT_ONLY) x = cuts.left[i] === 1 ? 2 : 0;
+    else if (cuts.left[i] !== 0) x = cuts.left[i] === 1 ? 2 : 0;
+    else if (left[i] !== right[i]) {
+      // The copies whose number is lower than that of the other copy of their vertex: residual arcs
+      // never lead up, nor do their mirror images, so no arc leaves this set and it is a minimum cut.
+      x = left[i] < right[i] ? 2 : 0;
+    } else x = 1;
+    value[order[i]] = x;
   }
   const doubledCosts = doubledCostsOf(graph, relaxation);
   let packed = 0;
   for (let e = 0; e < graph.m; e++) packed += doubledCosts[e];
   return { value, doubledCosts, packed };
-}
-
-/**
- * Numbers the strong components of the residual network among the nodes on which minimum cuts
- * differ (R. Tarjan, "Depth-first search and linear graph algorithms", SIAM J. Comput. 1, 1972); the
- * minimum cuts are the closed sets of components (J.-C. Picard and M. Queyranne, "On the structure
- * of all minimum cuts in a network and applications", Math. Programming Study 13, 1980).
- *
- * @returns a number for each node, equal in a component; arcs lead to equal or lower numbers
- */
-function strongComponents(
-  network: TransportNetwork,
-  state: TransportFlow,
-  cuts: ExtremeCuts,
-  meter: Meter,
-): { left: Int32Array; right: Int32Array } {
-  const { leftOffsets, leftTargets, rightOffsets, rightTargets } = network;
-  const { flow } = state;
-  const L = leftOffsets.length - 1, R = rightOffsets.length - 1;
-  // Nodes are 0 … L-1 on the left and L … L+R-1 on the right.
-  const seen = new Int32Array(L + R), low = new Int32Array(L + R);
-  const component = new Int32Array(L + R).fill(-1);
-  const next = new Int32Array(L + R);
-  next.set(leftOffsets.subarray(0, L));
-  next.set(rightOffsets.subarray(0, R), L);
-  const path = new Int32Array(L + R), open = new Int32Array(L + R);
-  let clock = 0, count = 0, opened = 0;
-  for (let root = 0; root < L + R; root++) {
-    if (seen[root] !== 0 || (root < L ? cuts.left[root] : cuts.right[root - L]) !== 0) continue;
-    let depth = 0;
-    path[0] = open[opened++] = root;
-    seen[root] = low[root] = ++clock;
-    while (depth >= 0) {
-      const x = path[depth];
-      let into = -1;
-      if (x < L) {
-        const end = leftOffsets[x + 1];
-        let a = next[x];
-        meter.tick();
-        for (; a < end; a++) {
-          const y = L + leftTargets[a];
-          if (cuts.right[y - L] !== 0 || component[y] >= 0) continue;
-          if (seen[y] === 0) {
-            into = y;
-            break;
-          }
-          if (seen[y] < low[x]) low[x] = seen[y];
-        }
-        next[x] = a;
-      } else {
-        const end = rightOffsets[x - L + 1];
-        let b = next[x];
-        meter.tick();
-        for (; b < end; b++) {
-          const y = rightTargets[b];
-          if (flow[b] === 0 || cuts.left[y] !== 0 || component[y] >= 0) continue;
-          if (seen[y] === 0) {
-            into = y;
-            break;
-          }
-          if (seen[y] < low[x]) low[x] = seen[y];
-        }
-        next[x] = b;
-      }
-      if (into >= 0) {
-        path[++depth] = open[opened++] = into;
-        seen[into] = low[into] = ++clock;
-        continue;
-      }
-      if (low[x] === seen[x]) {
-        let y: number;
-        do {
-          y = open[--opened];
-          component[y] = count;
-        } while (y !== x);
-        count++;
-      }
-      depth--;
-      if (depth >= 0 && low[x] < low[path[depth]]) low[path[depth]] = low[x];
-    }
-  }
-  return { left: component.subarray(0, L), right: component.subarray(L) };
 }

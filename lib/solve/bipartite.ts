@@ -4,9 +4,11 @@
  * other pieces with an odd cycle. Costs the flow; everything else is O(n + m).
  */
 import type { PackingProof } from "../certify/certificate.ts";
-import { extremeCuts, raiseToMaximum } from "../graph/max-flow-bipartite.ts";
+import { raiseToMaximum } from "../graph/max-flow-cover.ts";
+import { extremeCuts } from "../graph/max-flow-cover-cuts.ts";
 import { twoColouring } from "../graph/two-colouring.ts";
-import { doubledCostsOf, type Relaxation, relaxationOf } from "../reduce/relaxation.ts";
+import { doubledCostsOf, LEFT_ONLY, type Relaxation, relaxationOf } from "../reduce/relaxation.ts";
+import { startSymmetric } from "../reduce/relaxation-start.ts";
 import { exactSum } from "../run/exact.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
 import type { Declined, Piece, Solved } from "./engine.ts";
@@ -29,14 +31,15 @@ export function solveBipartite(piece: Piece, meter: Meter): Solved | Declined {
   let relaxation: Relaxation | undefined;
   try {
     relaxation = relaxationOf(graph, weights, meter);
-    const { network, state, leftOf, rightOf } = relaxation;
+    const { network, state, order, copies } = relaxation;
+    startSymmetric(relaxation, meter);
     raiseToMaximum(network, state, meter);
     const cuts = extremeCuts(network, state, meter);
     const chosen = new Uint8Array(graph.n);
-    for (let v = 0; v < graph.n; v++) {
-      chosen[v] = leftOf[v] >= 0
-        ? (cuts.left[leftOf[v]] === 1 ? 1 : 0)
-        : (cuts.right[rightOf[v]] === 1 ? 0 : 1);
+    for (let i = 0; i < graph.n; i++) {
+      chosen[order[i]] = copies[i] === LEFT_ONLY
+        ? (cuts.left[i] === 1 ? 1 : 0)
+        : (cuts.right[i] === 1 ? 0 : 1);
     }
     const weight = weightOf(weights, chosen);
     const packed = exactSum(state.flow);
