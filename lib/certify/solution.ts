@@ -41,10 +41,11 @@ export interface SolutionData {
   /** What was asked: items required and items ruled out. */
   readonly choose: readonly string[];
   readonly leave: readonly string[];
-  /** The instance: its name, unit, sizes and fingerprint. */
+  /** The instance: its name, unit, the columns ids and weights were read from, sizes, fingerprint. */
   readonly instance: {
     readonly name: string;
     readonly unit: string;
+    readonly columns?: { readonly id: string; readonly weight: string };
     readonly items: number;
     readonly conflicts: number;
     readonly fingerprint: string;

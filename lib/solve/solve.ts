@@ -186,6 +186,7 @@ function answer(
     instance: {
       name: instance.name,
       unit: instance.unit,
+      columns: instance.columns,
       items: instance.size,
       conflicts: instance.conflictCount,
       fingerprint: instance.fingerprint,
