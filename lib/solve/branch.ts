@@ -2,7 +2,7 @@
  * Exact branch and bound for any piece. Two searches share the work: clique covers on bit sets (very
  * many cheap nodes, good for small and dense pieces) and linear relaxations with rounded duals (few
  * strong nodes, good for sparse and structured ones). Which of the two fits a piece is hard to foresee,
- * so they take turns under budgets of work that grow fourfold; the loser costs a constant factor.
+ * so they take turns under growing budgets of work; the loser costs a constant factor.
  * Budgets count work, not time: the same piece and seed take the same path on every machine.
  */
 import { edgeCliqueCover } from "../polytope/clique-rows.ts";
@@ -18,8 +18,11 @@ import { type Incumbent, localSearch } from "./incumbent.ts";
 const MOST_COVER_VERTICES = 4096;
 /** With more edges than this the relaxation is left out, unless it is the only search. */
 const MOST_RELAXATION_EDGES = 300_000;
-/** First turns, in units of work (about 2^18 a millisecond); each later turn has four times more. */
-const FIRST_COVER_TURN = 2 ** 24;
+/**
+ * Budgets of the first turns, in units of work (about 2^18 a millisecond): a short look by covers,
+ * which is all that small pieces need, then both in earnest. Later turns grow fourfold and eightfold.
+ */
+const FIRST_COVER_TURNS = [2 ** 24, 2 ** 30];
 const FIRST_RELAXATION_TURN = 2 ** 28;
 /** A proof with more numbers than this is not kept: the search it comes from is given up. */
 const MOST_NUMBERS = 2 ** 24;
@@ -80,7 +83,7 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
 
   const covers = n <= MOST_COVER_VERTICES;
   const relaxations = m <= MOST_RELAXATION_EDGES || !covers;
-  let coverTurn = relaxations ? FIRST_COVER_TURN : Infinity;
+  let [coverTurn, nextCoverTurn] = relaxations ? FIRST_COVER_TURNS : [Infinity, Infinity];
   let relaxationTurn = covers ? FIRST_RELAXATION_TURN : Infinity;
   let coverOutgrown = !covers, relaxationOutgrown = !relaxations;
   let cliques: number[][] | undefined;
@@ -93,7 +96,8 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
       if (result.root !== undefined) return solved("clique covers", result, tree);
       if (meter.interruption !== undefined) return solved("clique covers");
       coverOutgrown = result.outgrown === true;
-      coverTurn *= 4;
+      coverTurn = nextCoverTurn;
+      nextCoverTurn *= 4;
     }
     if (!relaxationOutgrown) {
       cliques ??= unlessInterrupted(() => edgeCliqueCover(graph, meter));
@@ -115,7 +119,7 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
       if (result.root !== undefined) return solved("linear relaxations", result, tree);
       if (meter.interruption !== undefined) return solved("linear relaxations");
       relaxationOutgrown = result.outgrown === true;
-      relaxationTurn *= 4;
+      relaxationTurn *= 8;
     }
     await meter.breathe();
     if (meter.interruption !== undefined) break;

@@ -44,22 +44,41 @@ export function randomConnectedGraph(random: Random, n: number, extra: number): 
 }
 
 /**
- * A random graph in which every vertex has degree d, by pairing half-edges at random and starting
- * again until no loop and no parallel edge appears; n·d even, d small.
+ * A random graph in which every vertex has degree d: half-edges are paired at random, then a pair
+ * that is a loop or parallel to another changes partners with a random pair until none is left. Not
+ * quite uniform. n·d even, d well below n.
  */
 export function randomRegularGraph(random: Random, n: number, d: number): Graph {
-  for (;;) {
-    const ends = random.shuffle(Int32Array.from({ length: n * d }, (_, i) => Math.floor(i / d)));
-    const seen = new Set<number>();
-    let simple = true;
-    for (let i = 0; simple && i < ends.length; i += 2) {
-      const u = Math.min(ends[i], ends[i + 1]), v = Math.max(ends[i], ends[i + 1]);
-      simple = u !== v && !seen.has(u * n + v);
-      seen.add(u * n + v);
+  const ends = random.shuffle(Int32Array.from({ length: n * d }, (_, i) => Math.floor(i / d)));
+  const half = ends.length / 2;
+  const count = new Map<number, number>();
+  const keyOf = (i: number): number =>
+    Math.min(ends[2 * i], ends[2 * i + 1]) * n + Math.max(ends[2 * i], ends[2 * i + 1]);
+  const add = (i: number, change: number): void => {
+    count.set(keyOf(i), (count.get(keyOf(i)) ?? 0) + change);
+  };
+  const bad = (i: number): boolean =>
+    ends[2 * i] === ends[2 * i + 1] || (count.get(keyOf(i)) as number) > 1;
+  for (let i = 0; i < half; i++) add(i, 1);
+  for (let clean = 0, i = 0; clean < half; i = (i + 1) % half) {
+    if (!bad(i)) {
+      clean++;
+      continue;
     }
-    if (!simple) continue;
-    return graphFromPairs(n, [...seen].map((key) => [Math.floor(key / n), key % n] as const));
+    clean = 0;
+    const j = random.below(half);
+    add(i, -1);
+    if (j !== i) add(j, -1);
+    const kept = ends[2 * i + 1];
+    ends[2 * i + 1] = ends[2 * j + 1];
+    ends[2 * j + 1] = kept;
+    add(i, 1);
+    if (j !== i) add(j, 1);
   }
+  return graphFromPairs(
+    n,
+    Array.from({ length: half }, (_, i) => [ends[2 * i], ends[2 * i + 1]] as const),
+  );
 }
 
 /** Random edges between the sides 0 … a-1 and a … a+b-1. */

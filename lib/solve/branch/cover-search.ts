@@ -241,7 +241,7 @@ class CoverSearch {
       }
     }
     this.#work += work;
-    this.#numbers += 3 * terms.length;
+    this.#numbers += 2 + terms.length;
     return { used, count };
   }
 
@@ -249,7 +249,7 @@ class CoverSearch {
   #interrupted(): boolean {
     if (this.#numbers > this.#mostNumbers) return this.outgrown = true;
     try {
-      this.#meter.tick(this.#work + this.#words);
+      this.#meter.tick(6 * this.#work + this.#words);
       this.#work = 0;
       return false;
     } catch (error) {
