@@ -30,7 +30,9 @@ export type EdgeAttributes = { reasons: string[] };
  * ```
  */
 export class Instance extends Displayable {
+  /** Names the renderer. */
   readonly kind = "instance";
+  /** Shown in titles. */
   readonly name: string;
   /** Unit of the weights, such as "euros"; may be empty. */
   readonly unit: string;
@@ -52,7 +54,11 @@ export class Instance extends Displayable {
   #canonical: CanonicalOrder | undefined;
   #fingerprint: string | undefined;
 
-  /** @param parts as `assemble` gives them; callers use `Instance.from` or a reader */
+  /**
+   * For readers; callers use `Instance.from`.
+   *
+   * @param parts as `assemble` gives them
+   */
   constructor(parts: InstanceParts) {
     super();
     this.name = parts.name;
@@ -142,6 +148,7 @@ export class Instance extends Displayable {
     return graph;
   }
 
+  /** Name, sizes, total worth, the start of the fingerprint, and the notes. */
   override toString(): string {
     let total = 0;
     for (const w of this.weights) if (w > 0) total += w;

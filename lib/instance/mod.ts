@@ -13,6 +13,8 @@
  * ```
  * @module
  */
+export type { UndirectedGraph } from "graphology";
+export type { AbstractGraph } from "graphology-types";
 export { type EdgeAttributes, Instance, type NodeAttributes } from "./instance.ts";
 export { type Conflict, type InstanceInput, type Item, type Row, type Weight } from "./item.ts";
 export { type CanonicalOrder } from "./fingerprint.ts";
