@@ -156,7 +156,7 @@ export class BlockSlack {
 
   /** Sends what it can from one vertex along rising levels. */
   #send(root: number): number {
-    const { first, next, target, alive } = this.#graph;
+    const { next, target, alive } = this.#graph;
     const role = this.#role, open = this.#open, level = this.#level, rest = this.#rest;
     const flow = this.#flow, current = this.#arc;
     let sent = 0;

@@ -150,25 +150,44 @@ function boundOfRest(
   vertices: Int32Array,
   proof: BlocksProof,
 ): bigint {
-  const n = graph.vertices;
-  const { tails, heads } = graph.edges();
   const weights = costsAt(graph);
+  // place[v] is v's number in the parts, or -1.
+  const order = proof.order === undefined
+    ? Array.from(weights, (_, v) => v)
+    : Array.from(proof.order, (v) => requireThere(graph, v, "blocks, order"));
+  const place = new Int32Array(graph.vertices).fill(-1);
+  order.forEach((v, i) => {
+    if (place[v] >= 0) throw new Rejected(`blocks, order: vertex ${v} is named twice`);
+    place[v] = i;
+  });
+  const nameOf = (v: number) =>
+    v < vertices.length ? play.nameOf(vertices[v]) : `vertex ${v} of a gadget`;
+  const tails: number[] = [], heads: number[] = [];
+  const edges = graph.edges();
+  for (let e = 0; e < edges.costs.length; e++) {
+    const u = place[edges.tails[e]], v = place[edges.heads[e]];
+    if (u < 0 || v < 0) continue;
+    tails.push(u);
+    heads.push(v);
+  }
+  const n = order.length;
   const inner = {
     n,
     ...neighbourLists(n, tails, heads),
-    weights,
-    nameOf: (v: number) =>
-      v < vertices.length ? play.nameOf(vertices[v]) : `vertex ${v} of a gadget`,
+    weights: Float64Array.from(order, (v) => weights[v]),
+    nameOf: (i: number) => nameOf(order[i]),
     scratch: scratchFor(n),
   };
-  const seen = new Uint8Array(n);
+  const seen = new Uint8Array(graph.vertices);
   let sum = 0n;
   proof.parts.forEach((part, p) => {
     for (let i = 0; i < part.vertices.length; i++) {
-      const v = requireThere(graph, part.vertices[i], `blocks, part ${p}`);
-      if (seen[v] !== 0) {
-        throw new Rejected(`blocks, part ${p}: ${inner.nameOf(v)} is in two parts`);
-      }
+      const at: unknown = part.vertices[i];
+      const v = typeof at === "number" && Number.isInteger(at) && at >= 0 && at < n
+        ? order[at]
+        : -1;
+      requireThere(graph, v, `blocks, part ${p}`);
+      if (seen[v] !== 0) throw new Rejected(`blocks, part ${p}: ${nameOf(v)} is in two parts`);
       seen[v] = 1;
     }
     const proved = provenBound({ ...inner, vertices: part.vertices }, part.proof);
@@ -179,9 +198,9 @@ function boundOfRest(
     }
     sum += proved;
   });
-  for (let v = 0; v < n; v++) {
+  for (let v = 0; v < graph.vertices; v++) {
     if (seen[v] === 0 && weights[v] > 0) {
-      throw new Rejected(`blocks: ${inner.nameOf(v)} is in no part of what is left`);
+      throw new Rejected(`blocks: ${nameOf(v)} is in no part of what is left`);
     }
   }
   return sum;

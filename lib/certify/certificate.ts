@@ -47,7 +47,7 @@ export interface CertificatePart {
   readonly proof: Proof;
 }
 
-export type Proof = PackingProof | CasesProof | BlocksProof;
+export type Proof = PackingProof | CasesProof | BlocksProof | ProjectiveProof;
 
 /**
  * A fractional packing of edges: one sum, rounded down. Proves w(S) - c(S) for Mᵀc <= w, and more
@@ -120,6 +120,11 @@ export interface BlocksProof {
   /** One after another, each in the graph that those before it leave. */
   readonly blocks: readonly BlockReplacement[];
   /**
+   * Vertices of the end graph, at least all of positive weight, in the order in which the parts
+   * number them 0, 1, …; absent where the parts use the numbers of this proof.
+   */
+  readonly order?: Numbers;
+  /**
    * Disjoint parts of the end graph that hold all its vertices of positive weight, each with a bound
    * in the weights of the end graph, which are sums of doubled costs.
    */
@@ -141,4 +146,37 @@ export interface BlockReplacement {
   readonly ends: Numbers;
   /** Length j: their doubled costs, integers >= 0. */
   readonly doubled: Numbers;
+}
+
+/**
+ * An embedding in the projective plane with all faces even, and searches in its dual that show how
+ * much slack every stable set has. `certify/projective.ts` says why this proves a bound.
+ *
+ * H is the graph on the vertices of the part. Its vertices are taken in increasing order, and the
+ * *darts* out of each to its neighbours inside the part in increasing order: 2m darts in all.
+ */
+export interface ProjectiveProof {
+  readonly rule: "projective";
+  /** What `costs`, `distance` and `limits` are multiplied by, an integer >= 1. */
+  readonly unit: number;
+  /**
+   * Length m, edges in order of their first dart: doubled costs c in units, integers >= 0, with
+   * unit·Mᵀc = 2w at every vertex.
+   */
+  readonly costs: Numbers;
+  /**
+   * Length 2m: for each vertex in turn, its darts counterclockwise, each as its number (from 0) among
+   * the darts of this vertex. On the other sheet of the double cover the rotation is the mirror image.
+   */
+  readonly rotation: Numbers;
+  /** Darts whose faces, on the left when lifted to sheet 0, meet every one-sided cycle of the dual. */
+  readonly sources: Numbers;
+  /** The cost of a least one-sided directed cycle of the dual, in units. */
+  readonly distance: number;
+  /** The searches in preorder of a tree: the source (its number in `sources`) each starts from, … */
+  readonly starts: Numbers;
+  /** … how deep it stands in the tree, roots at 0, … */
+  readonly depths: Numbers;
+  /** … and the largest reduced distance it settles, in units. */
+  readonly limits: Numbers;
 }

@@ -39,6 +39,7 @@ export class SideSearch {
   readonly core: Uint8Array;
   readonly #graph: Graph;
   readonly #tick: (units: number) => void;
+  readonly #mayAttach: Uint8Array | undefined;
   /** Length 2n: the epoch in which a node was in the set searched from. */
   readonly #source: Int32Array;
   #sourceEpoch = 0;
@@ -56,11 +57,13 @@ export class SideSearch {
   /**
    * @param graph any simple graph
    * @param tick called with the work done, about one unit for each arc scanned
+   * @param mayAttach length n: 0 for vertices that no side returned may have as attachments
    */
-  constructor(graph: Graph, tick: (units: number) => void) {
+  constructor(graph: Graph, tick: (units: number) => void, mayAttach?: Uint8Array) {
     const { n } = graph;
     this.#graph = graph;
     this.#tick = tick;
+    this.#mayAttach = mayAttach;
     this.core = new Uint8Array(n);
     this.#source = new Int32Array(2 * n);
     this.#seen = new Int32Array(4 * n);
@@ -74,7 +77,8 @@ export class SideSearch {
    * The side around a vertex, grown as far as it goes.
    *
    * @param v a vertex outside the core
-   * @returns the side; "core" when v lies in no side; "twisted" when the least set around v is
+   * @returns the side; "core" when v lies in no side with attachments that are allowed; "twisted" when
+   *   the least set around v is
    */
   around(v: number): CoverSide | "core" | "twisted" {
     this.#sourceEpoch++;
@@ -86,6 +90,14 @@ export class SideSearch {
     for (const x of inside) this.#source[x] = this.#sourceEpoch;
     const failed = new Set<number>();
     let twisted = false;
+    // The largest so far whose attachments are allowed.
+    let size = 0, best: number[] = [];
+    const keep = (): void => {
+      if (attachments!.some((x) => this.#mayAttach?.[x >> 1] === 0)) return;
+      size = inside.length;
+      best = attachments!;
+    };
+    keep();
     for (let i = 0; i < attachments.length;) {
       const t = attachments[i];
       if (this.core[t >> 1] !== 0 || failed.has(t)) {
@@ -107,9 +119,11 @@ export class SideSearch {
         inside.push(x);
       }
       attachments = wider;
+      keep();
       i = 0;
     }
-    return { inside, attachments, twisted };
+    if (size === 0) return "core";
+    return { inside: inside.slice(0, size), attachments: best, twisted };
   }
 
   /** Where paths may start once t is in the set: its neighbours, and the other attachments. */

@@ -58,13 +58,18 @@ const WORK_PER_ELEMENT = 2000;
  * Finds sides as large as they come, and the core.
  *
  * @param graph any simple graph
+ * @param mayAttach length n: 0 for vertices that no side may have as attachments (default: none)
  * @returns disjoint sides, the core, and what was left out. Every side found is one whatever the
  *   graph is like; that no larger ones are missed is proved for graphs without twisted sets.
  *   Near-linear in practice; stops with complete = false after 2000·(n + m) units of work.
  * @throws {Interrupted} when the meter runs out
  */
-export function separations(graph: Graph, meter: Meter): Separations {
-  return new Growing(graph, meter).run();
+export function separations(
+  graph: Graph,
+  meter: Meter,
+  mayAttach?: Uint8Array,
+): Separations {
+  return new Growing(graph, meter, mayAttach).run();
 }
 
 class Growing {
@@ -79,13 +84,13 @@ class Growing {
   #crossing = 0;
   #twisted = 0;
 
-  constructor(graph: Graph, meter: Meter) {
+  constructor(graph: Graph, meter: Meter, mayAttach: Uint8Array | undefined) {
     this.#graph = graph;
     this.#workLeft = WORK_PER_ELEMENT * (graph.n + graph.m);
     this.#search = new SideSearch(graph, (units) => {
       this.#workLeft -= units;
       meter.tick(units);
-    });
+    }, mayAttach);
     this.#role = new Uint8Array(graph.n);
     this.#queued = new Uint8Array(graph.n);
   }

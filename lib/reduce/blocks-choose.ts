@@ -21,9 +21,12 @@ export interface Choice {
   readonly separations: Separations;
 }
 
-/** @param graph a simple graph */
-export function chooseBlocks(graph: Graph, meter: Meter): Choice {
-  const found = separations(graph, meter);
+/**
+ * @param graph a simple graph
+ * @param mayAttach length n: 0 for vertices that no block may have as attachments (default: none)
+ */
+export function chooseBlocks(graph: Graph, meter: Meter, mayAttach?: Uint8Array): Choice {
+  const found = separations(graph, meter, mayAttach);
   const taken = new Taken(graph.n);
   const groups = new Map<string, Group>();
   const add = (block: Block, large: boolean): void => {
@@ -38,6 +41,7 @@ export function chooseBlocks(graph: Graph, meter: Meter): Choice {
   for (const side of found.sides) add(side, true);
   for (const side of found.small) add(side, false);
   for (const { ends, inside } of chains(graph, meter)) {
+    if (ends.some((v) => mayAttach?.[v] === 0)) continue;
     add({
       inside,
       insideSide: Uint8Array.from(inside, (_, i) => 1 - (i & 1)),

@@ -13,6 +13,7 @@ import { exactAdd, exactSum } from "../run/exact.ts";
 import type { Meter } from "../run/meter.ts";
 import { liftBlocks, reduceBlocks, type Reduction } from "./blocks.ts";
 import type { CostGraph } from "./blocks-costs.ts";
+import type { Replacing } from "./gadgets-apply.ts";
 
 /** A connected component of a kernel, as engines take it. */
 export interface KernelPiece {
@@ -103,7 +104,7 @@ export function reducePiece(piece: KernelPiece, meter: Meter): ReducedPiece | un
       if (weight !== upperBound || !parts.every((part) => part !== undefined)) {
         return { chosen, weight, upperBound };
       }
-      return { chosen, weight, upperBound, proof: blocksProof(start, reduction, parts) };
+      return { chosen, weight, upperBound, proof: { ...blockReplacements(start, rounds), parts } };
     },
   };
 }
@@ -124,12 +125,15 @@ function asPieces({ graph, costs, ids }: CostGraph): KernelPiece[] {
   }));
 }
 
-/** The proof of the whole step, given proofs for what is left. */
-function blocksProof(
+/**
+ * The proof of replacements, without proofs for what is left.
+ *
+ * @param start the graph before the first round, its ids as the proof numbers vertices
+ */
+export function blockReplacements(
   start: CostGraph,
-  reduction: Reduction,
-  parts: readonly CertificatePart[],
-): BlocksProof {
+  rounds: readonly Replacing[],
+): Omit<BlocksProof, "parts"> {
   const { graph: { m, tails, heads }, costs, ids } = start;
   const ends: number[] = [], doubled: number[] = [];
   for (let e = 0; e < m; e++) {
@@ -141,7 +145,7 @@ function blocksProof(
     rule: "blocks",
     ends: Int32Array.from(ends),
     doubled: Float64Array.from(doubled),
-    blocks: reduction.rounds.flatMap(({ before, blocks }) =>
+    blocks: rounds.flatMap(({ before, blocks }) =>
       blocks.map(({ block: { inside, attachments }, gadget, firstId }) => ({
         inside: Array.from(inside, (v) => before.ids[v]),
         attachments: Array.from(attachments, (v) => before.ids[v]),
@@ -152,7 +156,6 @@ function blocksProof(
         doubled: [...gadget.costs],
       }))
     ),
-    parts,
   };
 }
 

@@ -15,3 +15,7 @@
 export { type HalfIntegralKernel, halfIntegralKernel } from "./kernel.ts";
 export { liftBlocks, reduceBlocks, type Reduction } from "./blocks.ts";
 export { type KernelPiece, type ReducedPiece, reducePiece } from "./blocks-piece.ts";
+export { decompose } from "./decompose.ts";
+export { type DecomposedComponent, Decomposition, type ItemBlock } from "./decomposition.ts";
+export { replaceBlocks } from "./replace-blocks.ts";
+export { type GadgetInfo, type GadgetState, gadgetText, Replacement } from "./replacement.ts";
