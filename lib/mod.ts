@@ -40,6 +40,7 @@ export * from "./instance/mod.ts";
 export { show } from "./notebook/show.ts";
 export { InstanceError } from "./run/errors.ts";
 export type { Progress, RunOptions } from "./run/options.ts";
+export type { EngineName } from "./solve/engine.ts";
 export type { SolveOptions } from "./solve/solve.ts";
 
 /**

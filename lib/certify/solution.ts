@@ -2,6 +2,7 @@
 import { Displayable } from "../run/displayable.ts";
 import type { Certificate } from "./certificate.ts";
 
+/** Proved best; conflict-free with a bound; or impossible as asked. */
 export type SolutionStatus = "optimal" | "feasible" | "infeasible";
 
 /** How one part of the instance was solved. */
@@ -76,6 +77,7 @@ export class Solution extends Displayable implements SolutionData {
   readonly leave: readonly string[];
   readonly instance: SolutionData["instance"];
 
+  /** Takes what a solver found, or what JSON held, and computes the gap. @param data plain data */
   constructor(data: SolutionData) {
     super();
     this.status = data.status;

@@ -6,6 +6,8 @@ export class Verdict extends Displayable {
   readonly kind = "verdict";
 
   /**
+   * States a verdict.
+   *
    * @param valid whether optimality is proved
    * @param reason one sentence: what was proved, or the first thing that is wrong
    */

@@ -16,6 +16,7 @@ export class InstanceError extends Error {
   /** One sentence for each problem, naming the row or id and what was expected. */
   readonly problems: readonly string[];
 
+  /** Collects the problems. @param problems at least one sentence */
   constructor(problems: readonly string[]) {
     super(
       problems.length === 1

@@ -14,6 +14,7 @@ export type StopReason = "time" | "stop" | "work";
 /** Thrown by `Meter.tick`; not an error, but the way out of a deep synchronous loop. */
 export class Interrupted extends Error {
   override readonly name = "Interrupted";
+  /** Says why the meter ran out. @param reason limit, stop or budget */
   constructor(readonly reason: StopReason) {
     super(`interrupted: ${reason}`);
   }
@@ -27,6 +28,7 @@ const REPORT_EVERY_MS = 100;
 /** Source of the time in milliseconds; one place, so that tests can replace it. */
 export type Clock = () => number;
 
+/** Counts the work of a run and says when to stop. */
 export class Meter {
   readonly seed: number;
   #clock: Clock;
@@ -42,6 +44,8 @@ export class Meter {
   #parent: Meter | undefined;
 
   /**
+   * Starts the clock.
+   *
    * @param options limits and callbacks of the run
    * @param flag length 1, over a SharedArrayBuffer: another thread stores 1 to ask for a stop
    * @param clock milliseconds, monotone

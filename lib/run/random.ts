@@ -17,7 +17,7 @@ export class Random {
   #c: number;
   #d = 1;
 
-  /** @param seed an integer below 2^53 in size */
+  /** Starts the sequence of a seed. @param seed an integer below 2^53 in size */
   constructor(seed: number) {
     this.#a = seed | 0;
     this.#b = Math.floor(seed / 4294967296) | 0;

@@ -44,6 +44,7 @@ export interface Declined {
   readonly reason: string;
 }
 
+/** Engines by name, as `SolveOptions.engine` takes them. */
 export type EngineName = "bipartite" | "transversal" | "projective" | "branch" | "mip";
 
 export type Engine = (
