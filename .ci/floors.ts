@@ -28,7 +28,11 @@ const CERTIFY_MAY_USE = /^(run|instance)\/|^graph\/(graph|components|two-colouri
 
 interface Module {
   specifier: string;
-  dependencies?: { specifier: string; code?: { specifier?: string }; type?: { specifier?: string } }[];
+  dependencies?: {
+    specifier: string;
+    code?: { specifier?: string };
+    type?: { specifier?: string };
+  }[];
 }
 
 const root = new URL("../lib/", import.meta.url).href;
@@ -82,8 +86,9 @@ for (const [from, targets] of imports) {
     // Commands and the roof are what a user calls; they stand on the public face.
     if (floor === "commands" && to === "mod.ts") continue;
     const below = FLOORS.indexOf(other);
-    if (below < 0 || below > height) problems.push(`lib/${from} imports lib/${to}, which is above it`);
-    else if (to.endsWith("/mod.ts")) problems.push(`lib/${from} imports the barrel lib/${to}`);
+    if (below < 0 || below > height) {
+      problems.push(`lib/${from} imports lib/${to}, which is above it`);
+    } else if (to.endsWith("/mod.ts")) problems.push(`lib/${from} imports the barrel lib/${to}`);
     if (floor === "certify" && !CERTIFY_MAY_USE.test(to)) {
       problems.push(`lib/${from} imports lib/${to}: the checker uses no solver's algorithm`);
     }
