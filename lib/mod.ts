@@ -21,6 +21,8 @@ import { withSource } from "./display/sources.ts";
 import type { Instance } from "./instance/instance.ts";
 import { enterNotebook } from "./notebook/enter.ts";
 import { withKernelRun } from "./notebook/kernel-run.ts";
+import { type Classification, classify as classifyHere } from "./reduce/classify.ts";
+import type { RunOptions } from "./run/options.ts";
 import { solve as solveHere, type SolveOptions } from "./solve/solve.ts";
 
 registerRenderers();
@@ -38,6 +40,7 @@ export { saveReport } from "./display/save-report.ts";
 export { chartWeights } from "./display/weight-chart.ts";
 export * from "./instance/mod.ts";
 export { show } from "./notebook/show.ts";
+export { Classification } from "./reduce/classify.ts";
 export { InstanceError } from "./run/errors.ts";
 export type { Progress, RunOptions } from "./run/options.ts";
 export type { EngineName } from "./solve/engine.ts";
@@ -57,4 +60,17 @@ export function solve(instance: Instance, options: SolveOptions = {}): Promise<S
   return withKernelRun("solve", options, async (watched) => {
     return withSource(await solveHere(instance, watched), instance);
   });
+}
+
+/**
+ * Classifies an instance by its odd cycles. In a notebook the Stop button ends it and a line shows
+ * its progress. See `reduce/classify.ts`.
+ *
+ * @param instance items and conflicts; weights play no part
+ * @param options limits and progress
+ * @returns the class of every component with witnesses; what a limit leaves open shows as an interval
+ * @throws {RangeError} for run options that mean nothing
+ */
+export function classify(instance: Instance, options: RunOptions = {}): Promise<Classification> {
+  return withKernelRun("classify", options, (watched) => classifyHere(instance, watched));
 }
