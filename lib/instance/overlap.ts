@@ -43,6 +43,7 @@ export function overlapConflicts(rows: readonly object[], options: OverlapOption
     const name = columnName(column, what);
     if (absent.has(name) && typeof column === "string") return 0;
     const value = cell(list[i], column);
+    if (scale === "number" && typeof value === "number" && Number.isFinite(value)) return value;
     const moment = readMoment(value);
     if (moment === undefined) {
       problems.push(
