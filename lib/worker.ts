@@ -2,8 +2,14 @@
 /// <reference lib="deno.worker" />
 /** The one entry of worker threads: receives an order, runs its job, answers. */
 import { type Order, type Reply, serve } from "./run/aside.ts";
+import { highsJob } from "./polytope/highs-aside.ts";
+import { classifyJob } from "./reduce/classify.ts";
 import { solveJob } from "./solve/solve.ts";
 
 self.onmessage = ({ data }: MessageEvent<Order>) => {
-  serve(data, { solve: solveJob }, (reply: Reply) => self.postMessage(reply));
+  serve(
+    data,
+    { solve: solveJob, highs: highsJob, classify: classifyJob },
+    (reply: Reply) => self.postMessage(reply),
+  );
 };

@@ -10,6 +10,9 @@ export type Highs = Awaited<ReturnType<typeof loader.default>>;
 /** What `createModel` makes; to be disposed of. */
 export type HighsModel = ReturnType<Highs["createModel"]>;
 
+/** Ways to end early that are no failure. */
+const STOPPED = ["interrupted", "timeLimit", "iterationLimit", "solutionLimit"] as const;
+
 let loaded: Promise<Highs> | undefined;
 
 /** Loads HiGHS, or returns what has been loaded. */
@@ -57,8 +60,12 @@ export interface HighsOutcome {
 /** What may be watched or set during a run. */
 export interface HighsOptions {
   readonly seed?: number;
-  /** Seconds; HiGHS looks at its clock itself, not very often. */
-  readonly timeLimit?: number;
+  /** Milliseconds; HiGHS looks at its clock itself, not very often. */
+  readonly timeLimitMs?: number;
+  /** Most nodes of its search tree. */
+  readonly nodeLimit?: number;
+  /** Integer optima are searched for up to this difference, in units of the cost; 1e-6 if absent. */
+  readonly absoluteGap?: number;
   /** A point to begin with; length columns. */
   readonly start?: Float64Array;
   /** Asked now and then, sometimes only once a second; true ends the run. */
@@ -92,8 +99,9 @@ export async function runHighs(
       output_flag: false,
       random_seed: (options.seed ?? 0) & 0x7fffffff,
       mip_rel_gap: 0,
-      mip_abs_gap: 0.5,
-      ...(options.timeLimit === undefined ? {} : { time_limit: options.timeLimit }),
+      mip_abs_gap: options.absoluteGap ?? 1e-6,
+      ...(Number.isFinite(options.timeLimitMs) ? { time_limit: options.timeLimitMs! / 1000 } : {}),
+      ...(Number.isFinite(options.nodeLimit) ? { mip_max_nodes: options.nodeLimit! } : {}),
     });
     if (options.start !== undefined) native.setSolution({ colValue: options.start });
     const { modelStatus: ended } = native.run({
@@ -116,14 +124,12 @@ export async function runHighs(
       },
     });
     const feasible = native.info.get("primal_solution_status") === solutionStatus.feasible;
-    if (ended === modelStatus.optimal || ended === modelStatus.empty) {
-      if (model.integer) watchBound(native.info.get("mip_dual_bound") as number);
-      else bound = native.getObjectiveValue();
-    }
+    if (model.integer) watchBound(native.info.get("mip_dual_bound") as number);
+    else if (ended === modelStatus.optimal) bound = native.getObjectiveValue();
     return {
       status: ended === modelStatus.optimal
         ? "optimal"
-        : ended === modelStatus.interrupted || ended === modelStatus.timeLimit
+        : STOPPED.some((name) => ended === modelStatus[name])
         ? "interrupted"
         : "failed",
       value: feasible ? native.getObjectiveValue() : -Infinity,
