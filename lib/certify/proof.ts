@@ -4,6 +4,7 @@ import { casesBound } from "./cases.ts";
 import type { Proof } from "./certificate.ts";
 import { packingBound } from "./packing.ts";
 import type { Play } from "./play.ts";
+import { projectiveBound } from "./projective.ts";
 import { Rejected } from "./rejected.ts";
 
 /**
@@ -22,6 +23,8 @@ export function provenBound(play: Play, proof: Proof): bigint {
       return casesBound(play, proof);
     case "blocks":
       return blocksBound(play, proof);
+    case "projective":
+      return projectiveBound(play, proof);
     default:
       throw new Rejected(`unknown rule ${JSON.stringify((proof as { rule?: unknown })?.rule)}`);
   }

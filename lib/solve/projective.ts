@@ -1,0 +1,136 @@
+/**
+ * Solves a component of a half-integral kernel that has an even-face embedding in the projective
+ * plane, exactly: a heaviest stable set is a shortest one-sided cycle in the directed dual. See
+ * Conforti, Fiorini, Huynh, Joret and Weltge, "The stable set problem in graphs with bounded genus and
+ * bounded odd cycle packing number" (SODA 2020) for slacks as circulations in the dual (written from
+ * memory). Recognition, dual and lifting take near-linear time; projective/least-cycle.ts says what
+ * the searches take.
+ */
+import type { ProjectiveProof } from "../certify/certificate.ts";
+import type { Graph } from "../graph/graph.ts";
+import { evenFaceEmbedding } from "../parity/even-face.ts";
+import type { NoEvenFace } from "../parity/even-face-result.ts";
+import type { Meter } from "../run/meter.ts";
+import type { Declined, Piece, Solved } from "./engine.ts";
+import { directedDual } from "./projective/directed-dual.ts";
+import { leastOneSidedCycle } from "./projective/least-cycle.ts";
+import { stableSetOfCycle } from "./projective/lift.ts";
+import { proofOf } from "./projective/proof.ts";
+import { sourceCurve } from "./projective/source-curve.ts";
+
+/**
+ * The engine for even-face embeddings.
+ *
+ * @param piece a component of a half-integral kernel, with its doubled costs
+ * @param meter counts about one unit for each arc scanned
+ * @returns the optimum with its proof, or why the piece is not one for this engine
+ * @throws {Interrupted} when the meter runs out; there is no solution before the end
+ */
+export function solveProjective(piece: Piece, meter: Meter): Solved | Declined {
+  const { graph, doubledCosts } = piece;
+  if (doubledCosts === undefined) {
+    return { status: "declined", reason: "it is not a component of a half-integral kernel" };
+  }
+  if (hasParallelEdges(graph)) {
+    return { status: "declined", reason: "it has parallel edges" };
+  }
+  meter.report("even-face embedding", { done: 0, total: 1 });
+  const embedding = evenFaceEmbedding(graph, meter, { witness: false });
+  if (embedding.kind === "no") return { status: "declined", reason: whyNot(embedding) };
+  return solveEmbedded(piece, doubledCosts, embedding.next, meter);
+}
+
+/**
+ * Solves a piece whose embedding is known.
+ *
+ * @param piece connected, simple, not bipartite
+ * @param doubledCosts length m, integers >= 0 with Mᵀc = 2w
+ * @param next length 2m, the rotation system of an even-face embedding, every edge twisted
+ * @returns the optimum with its proof
+ */
+export function solveEmbedded(
+  piece: Piece,
+  doubledCosts: Float64Array,
+  next: Int32Array,
+  meter: Meter,
+): Solved {
+  const { graph, weights } = piece;
+  const { unit, step, costs, around } = inUnits(graph, weights, doubledCosts);
+  const dual = directedDual(graph, next, costs);
+  const curve = sourceCurve(graph, next, dual, around, meter);
+  const cycle = leastOneSidedCycle(graph, dual, curve, around, step, meter);
+  const chosen = stableSetOfCycle(graph, cycle.crossed, meter);
+
+  let total = 0, weight = 0;
+  for (let v = 0; v < graph.n; v++) {
+    total += weights[v];
+    if (chosen[v] !== 0) weight += weights[v];
+  }
+  // Every stable set weighs at most (w(V) - distance) / 2, and this one must reach it.
+  if (2 * weight !== total - unit * cycle.cost) {
+    throw new Error(
+      `internal: a one-sided cycle of cost ${unit * cycle.cost} gave a stable set of weight ` +
+        `${weight} out of ${total}`,
+    );
+  }
+  return {
+    status: "optimal",
+    chosen,
+    weight,
+    upperBound: weight,
+    proof: proofOf(piece, next, unit, costs, dual, curve, cycle) satisfies ProjectiveProof,
+    figures: {
+      faces: dual.pairs,
+      slack: unit * cycle.cost / 2,
+      sources: curve.faces.length,
+      searches: cycle.plan.sources.length,
+    },
+  };
+}
+
+/** Costs divided by what divides them all, and what one-sided cycles are equal modulo. */
+function inUnits(graph: Graph, weights: Float64Array, doubledCosts: Float64Array) {
+  let unit = 0, divisor = 0, most = 0;
+  for (let e = 0; e < graph.m; e++) unit = greatestCommonDivisor(doubledCosts[e], unit);
+  for (let v = 0; v < graph.n; v++) divisor = greatestCommonDivisor(weights[v], divisor);
+  const around = new Float64Array(graph.n);
+  for (let v = 0; v < graph.n; v++) around[v] = 2 * weights[v] / unit;
+  for (let e = 0; e < graph.m; e++) if (doubledCosts[e] > most) most = doubledCosts[e];
+  const costs = most / unit < 2 ** 31
+    ? Int32Array.from(doubledCosts, (c) => c / unit)
+    : Float64Array.from(doubledCosts, (c) => c / unit);
+  // The cost of a cycle is w(V) - 2 w(x) for an integer vector x, see certify/projective.ts.
+  return { unit, step: 2 * divisor / unit, costs, around };
+}
+
+function greatestCommonDivisor(a: number, b: number): number {
+  while (b !== 0) [a, b] = [b, a % b];
+  return a;
+}
+
+function hasParallelEdges(graph: Graph): boolean {
+  const { n, offsets, targets } = graph;
+  const last = new Int32Array(n).fill(-1);
+  for (let v = 0; v < n; v++) {
+    for (let a = offsets[v]; a < offsets[v + 1]; a++) {
+      if (last[targets[a]] === v) return true;
+      last[targets[a]] = v;
+    }
+  }
+  return false;
+}
+
+function whyNot(no: NoEvenFace): string {
+  switch (no.reason) {
+    case "not connected":
+      return "it is not connected";
+    case "bipartite":
+      return "it is bipartite";
+    case "odd cycles in separate blocks":
+      return "it has no even-face embedding: two of its blocks have odd cycles of their own";
+    case "cover not planar":
+      return "it has no even-face embedding: its double cover is not planar";
+    case "orientation kept":
+      return "it has no even-face embedding: swapping the sheets of its cover keeps orientation";
+  }
+}

@@ -1,0 +1,128 @@
+/**
+ * The least-cost one-sided directed cycle of the dual, with the plan of searches that proves it.
+ *
+ * For every face x of a one-sided curve the distance d(x, x̄) to its antipode is either bounded below
+ * through a potential or found by a search. The searches form a tree: the first one looks at the
+ * whole sphere, each further one takes the middle of the sources that are still open on one side of
+ * its parent, with the parent's potential. Near the parent that bound is close, so a search deep in
+ * the tree looks at a small part of the sphere. In practice the work grows little faster than the
+ * sphere; at worst it is one Dijkstra search, O(m log m), for each source.
+ */
+import type { Graph } from "../../graph/graph.ts";
+import { HeapQueue } from "../../graph/heap.ts";
+import type { Meter } from "../../run/meter.ts";
+import type { DirectedDual } from "./directed-dual.ts";
+import { NARROW_LIMIT, PotentialChain, TooWide } from "./potential-chain.ts";
+import { queueFor, type SourceCurve } from "./source-curve.ts";
+
+/** The answer and how to check it. */
+export interface LeastCycle {
+  /** The cost of a least one-sided directed cycle. */
+  readonly cost: number;
+  /** The edges of H it crosses, with repetitions. */
+  readonly crossed: number[];
+  /** The searches in preorder of their tree. */
+  readonly plan: SearchPlan;
+}
+
+/** Parallel arrays, one entry for each search. */
+export interface SearchPlan {
+  /** Which source (index into the curve's faces) the search starts from. */
+  readonly sources: number[];
+  /** Depth in the tree: 0 for a root; children stand after their parent. */
+  readonly depths: number[];
+  /** Largest reduced distance settled. */
+  readonly limits: number[];
+}
+
+/**
+ * How far beyond what its own source needs a search goes, so that its children stay inside what it
+ * settled: a fraction of the bound on the way to them and back. Measured on mirrored grids.
+ */
+const REACH = 0.6;
+
+/**
+ * Finds a least one-sided cycle.
+ *
+ * @param graph H
+ * @param dual its directed dual
+ * @param curve sources that every one-sided cycle passes
+ * @param around length n, what the dual arcs around each vertex cost together
+ * @param step all costs of one-sided cycles are equal modulo this
+ */
+export function leastOneSidedCycle(
+  graph: Graph,
+  dual: DirectedDual,
+  curve: SourceCurve,
+  around: Float64Array,
+  step: number,
+  meter: Meter,
+): LeastCycle {
+  // Reduced costs are at most the cost of going around either end.
+  let span = 0;
+  for (let e = 0; e < graph.m; e++) {
+    const most = Math.min(around[graph.tails[e]], around[graph.heads[e]]);
+    if (most > span) span = most;
+  }
+  if (span < NARROW_LIMIT) {
+    try {
+      const queue = queueFor(span, dual.pairs);
+      return runSearches(new PotentialChain(dual, queue, false), curve, step, meter);
+    } catch (error) {
+      if (!(error instanceof TooWide)) throw error;
+    }
+  }
+  return runSearches(new PotentialChain(dual, new HeapQueue(), true), curve, step, meter);
+}
+
+function runSearches(
+  chain: PotentialChain,
+  curve: SourceCurve,
+  step: number,
+  meter: Meter,
+): LeastCycle {
+  const { faces, positions } = curve;
+  const plan: SearchPlan = { sources: [], depths: [], limits: [] };
+  const proven = new Uint8Array(faces.length);
+  let cost = Infinity, crossed: number[] = [], done = 0;
+  prove(0, faces.length);
+  return { cost, crossed, plan };
+
+  /** Proves the sources from low to high - 1. The depth of the recursion is logarithmic. */
+  function prove(low: number, high: number): void {
+    const open: number[] = [];
+    for (let i = low; i < high; i++) {
+      // The least cost may have fallen since the potential was set up.
+      if (chain.bound(faces[i]) > cost - step) proven[i] = 1;
+      if (proven[i] === 0) open.push(i);
+    }
+    if (open.length === 0) return;
+    const middle = open[open.length >> 1];
+    const left = open[open.length >> 2], right = open[(3 * open.length) >> 2];
+    const away = Math.max(
+      positions[middle] - positions[left],
+      positions[right] - positions[middle],
+    );
+    const beyond = Math.floor(REACH * away);
+    const bound = chain.bound(faces[middle]), source = chain.start(faces[middle]);
+    const found = bound + chain.search(source, cost - step - bound + beyond, beyond, meter);
+    if (found < cost) {
+      cost = found;
+      crossed = chain.pathFrom(source);
+    }
+    plan.sources.push(middle);
+    plan.depths.push(chain.depth);
+    plan.limits.push(chain.limit);
+    chain.advance();
+    proven[middle] = 1;
+    for (let i = 0; i < faces.length; i++) {
+      if (proven[i] === 0 && chain.bound(faces[i]) > cost - step) proven[i] = 1;
+      done += proven[i];
+    }
+    meter.report("shortest one-sided cycle", { done, total: faces.length });
+    done = 0;
+    prove(low, middle);
+    prove(middle + 1, high);
+    chain.retreat();
+  }
+}
