@@ -23,3 +23,16 @@ export { type TwoColouring, twoColouring } from "./two-colouring.ts";
 export { type FlowNetwork, type MaxFlow, maxFlow } from "./max-flow.ts";
 export { type Separations, separations, type Side } from "./separations.ts";
 export { type Chain, chains } from "./separations-chains.ts";
+export {
+  dartEnd,
+  dartStart,
+  eulerGenus,
+  type Faces,
+  isRotationSystem,
+  mirrored,
+  type SignedEmbedding,
+  signedEulerGenus,
+  traceFaces,
+} from "./embedding.ts";
+export { type Planarity, planarity, planarRotation } from "./planarity.ts";
+export { type Kuratowski, kuratowskiProblem } from "./kuratowski.ts";

@@ -1,23 +1,29 @@
 /**
- * Odd cycles: transversals that meet them all, packings of disjoint ones, and embeddings in the
- * projective plane with all faces even, which explain why a graph far from bipartite has no two
- * disjoint odd cycles. Graphs only; nothing here knows items or weights.
+ * Odd and even: what the odd cycles of a graph look like. The signed double cover, least odd cycles,
+ * transversals and packings of odd cycles, and the even-face embeddings in the projective plane that
+ * graphs without two disjoint odd cycles have once they are far from bipartite.
  *
  * @example
  * ```ts
+ * import { evenFaceEmbedding } from "./mod.ts";
  * import { graphFromPairs } from "../graph/mod.ts";
  * import { Meter } from "../run/mod.ts";
- * import { leastTransversal } from "./mod.ts";
- * const k5 = graphFromPairs(5, [0, 1, 2, 3].flatMap((u) =>
- *   Array.from({ length: 4 - u }, (_, i) => [u, u + 1 + i] as const)
- * ));
- * console.assert(leastTransversal(k5, new Meter()).upper === 3);
+ * const triangle = graphFromPairs(3, [[0, 1], [1, 2], [2, 0]]);
+ * console.assert(evenFaceEmbedding(triangle, new Meter()).kind === "embedded");
  * ```
  * @module
  */
-export { classifyGraph, type GraphClass, type GraphKind } from "./classify-graph.ts";
-export { doubleCover } from "./double-cover.ts";
+export { doubleCover, liftDart, liftRotation } from "./double-cover.ts";
+export {
+  type CheapOddCycle,
+  type OddCycleOptions,
+  shortestOddCycle,
+} from "./shortest-odd-cycle.ts";
 export { evenFaceEmbedding, type EvenFaceOptions } from "./even-face.ts";
-export type { EvenFaceEmbedding, EvenFaceResult, NoEvenFace } from "./even-face-result.ts";
-export { type OddCyclePacking, oddCyclePacking } from "./odd-cycle-packing.ts";
+export {
+  type EvenFaceEmbedding,
+  type EvenFaceResult,
+  type NoEvenFace,
+  type NoEvenFaceReason,
+} from "./even-face-result.ts";
 export { leastTransversal, type Transversal, type TransversalOptions } from "./transversal.ts";

@@ -75,7 +75,7 @@ describe("rotation systems", () => {
   it("keeps the invariants on random rotation systems", () => {
     const random = new Random(3);
     let planar = 0;
-    for (let t = 0; t < 2000; t++) {
+    for (let t = 0; t < 1000; t++) {
       const graph = randomConnectedGraph(random, 2 + random.below(7), random.below(6));
       const next = randomRotation(graph, random), prev = mirrored(next);
       expect(isRotationSystem(graph, next)).toBe(true);
@@ -88,7 +88,7 @@ describe("rotation systems", () => {
       if (genus === 0) planar++;
       const faces = traceFaces(next, prev);
       expect(Math.max(...faces.of)).toBe(faces.count - 1);
-      for (let d = 0; d < 2 * graph.m; d++) expect(faces.of[prev[d ^ 1]]).toBe(faces.of[d]);
+      expect(faces.of.every((f, d) => faces.of[prev[d ^ 1]] === f)).toBe(true);
       // Nothing twisted is the same surface; so is it after a vertex has changed its sense.
       const twisted = new Uint8Array(graph.m);
       expect(signedEulerGenus(graph, { next, twisted })).toBe(genus);
@@ -102,7 +102,7 @@ describe("rotation systems", () => {
       const { lengths } = traceSignedFaces({ next: turned, twisted });
       expect(lengths.reduce((sum, length) => sum + length, 0)).toBe(2 * graph.m);
     }
-    expect(planar).toBeGreaterThan(100);
+    expect(planar).toBeGreaterThan(50);
   });
 
   it("finds the projective plane: one twisted cycle, and K4 with three faces of length four", () => {
