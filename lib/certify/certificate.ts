@@ -173,7 +173,10 @@ export interface ProjectiveProof {
   readonly sources: Numbers;
   /** The cost of a least one-sided directed cycle of the dual, in units. */
   readonly distance: number;
-  /** The searches in preorder of a tree: the source (its number in `sources`) each starts from, … */
+  /**
+   * The searches in preorder of a tree: the source (its number in `sources`) each starts from, at the
+   * lift for which the potential says more (the one named, if it says the same of both), …
+   */
   readonly starts: Numbers;
   /** … how deep it stands in the tree, roots at 0, … */
   readonly depths: Numbers;

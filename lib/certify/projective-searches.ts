@@ -104,7 +104,7 @@ class Searches {
     const { offsets, ends, costs } = this.depth % 2 === 0 ? this.dual.out : this.dual.into;
     const a = this.#a, reduced = this.#reduced, queue = this.#queue, touched = this.#touched;
     const sign = this.#sign;
-    // From the lift for which the potential at hand says more.
+    // From the lift for which the potential at hand says more; if both are equal, the one named.
     const source = sign * (a[start] - a[start ^ 1]) >= 0 ? start : start ^ 1;
     let count = 0, settled = 0, last = 0;
     queue.clear();

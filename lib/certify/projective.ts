@@ -105,7 +105,7 @@ function requireCosts(
   return { costs, span };
 }
 
-/** The faces of the sources, even lifts. */
+/** The faces of the sources on the sphere. */
 function requireSources(proof: ProjectiveProof, left: Int32Array): Int32Array {
   const faces = new Int32Array(proof.sources.length);
   for (let i = 0; i < faces.length; i++) {
@@ -115,7 +115,7 @@ function requireSources(proof: ProjectiveProof, left: Int32Array): Int32Array {
         `projective, source ${i}: expected a dart from 0 to ${left.length - 1}, got ${dart}`,
       );
     }
-    faces[i] = left[dart] & ~1;
+    faces[i] = left[dart];
   }
   return faces;
 }

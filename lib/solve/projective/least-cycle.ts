@@ -105,7 +105,9 @@ function runSearches(
     );
     const beyond = Math.floor(REACH * away);
     const bound = chain.bound(faces[middle]), source = chain.start(faces[middle]);
-    const found = bound + chain.search(source, cost - step - bound + beyond, beyond, meter);
+    // Reaching this limit, the potential proves a distance above cost - step.
+    const limit = cost - step + 1 - bound + beyond;
+    const found = bound + chain.search(source, limit, beyond, meter);
     if (found < cost) {
       cost = found;
       crossed = chain.pathFrom(source);

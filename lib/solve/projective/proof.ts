@@ -54,14 +54,14 @@ export function proofOf(
       rotation[begin[v] + i] = placeOf[d] - begin[v];
     }
   }
-  const dartOf = new Int32Array(dual.pairs);
-  for (let p = 2 * m - 1; p >= 0; p--) dartOf[dual.left[dartAt[p]] >> 1] = p;
+  const dartOf = new Int32Array(2 * dual.pairs);
+  for (let p = 2 * m - 1; p >= 0; p--) dartOf[dual.left[dartAt[p]]] = p;
   return {
     rule: "projective",
     unit,
     costs: orderedCosts,
     rotation,
-    sources: Int32Array.from(curve.faces, (x) => dartOf[x >> 1]),
+    sources: Int32Array.from(curve.faces, (x) => dartOf[x]),
     distance: cycle.cost,
     starts: Int32Array.from(cycle.plan.sources),
     depths: Int32Array.from(cycle.plan.depths),
