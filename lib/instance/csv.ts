@@ -21,9 +21,10 @@ export interface CsvTable {
   readonly problems: readonly string[];
 }
 
-/** Records as lists of fields, blank lines left out. */
+/** Records as lists of fields, blank lines left out; the first holds the column names. */
 interface Records {
-  readonly records: readonly string[][];
+  readonly records: Iterable<string[]>;
+  /** Valid for a record once it has been taken from `records`. */
   lineOf(record: number): number;
   readonly problems: readonly string[];
 }
@@ -43,29 +44,35 @@ export function parseCsv(text: string, name: string): CsvTable {
     ? parseRecords(body, delimiter, name)
     : splitRecords(body, delimiter);
   const problems = [...malformed];
-  if (records.length === 0) {
-    if (problems.length === 0) {
-      problems.push(`${name}: the table is empty; expected a line of column names`);
-    }
-    return { columns: [], rows: [], lineOf: () => 1, problems };
-  }
-  const columns = records[0].map((column) => column.trim());
-  for (const twice of new Set(columns.filter((c, at) => c !== "" && columns.indexOf(c) < at))) {
-    problems.push(`${name} line ${lineOf(0)}: column ${shown(twice)} stands twice`);
-  }
+  let columns: string[] | undefined;
   const rows: Row[] = [], recordOf: number[] = [];
-  for (let r = 1; r < records.length; r++) {
-    const fields = records[r];
+  let at = -1;
+  for (const fields of records) {
+    at++;
+    if (columns === undefined) {
+      columns = fields.map((column) => column.trim());
+      continue;
+    }
     if (fields.length !== columns.length) {
       problems.push(
-        `${name} line ${lineOf(r)}: expected ${columns.length} fields, got ${fields.length}`,
+        `${name} line ${lineOf(at)}: expected ${columns.length} fields, got ${fields.length}`,
       );
       continue;
     }
     const row: Record<string, string> = {};
     for (let c = 0; c < columns.length; c++) row[columns[c]] = fields[c].trim();
     rows.push(row);
-    recordOf.push(r);
+    recordOf.push(at);
+  }
+  if (columns === undefined) {
+    if (problems.length === 0) {
+      problems.push(`${name}: the table is empty; expected a line of column names`);
+    }
+    return { columns: [], rows, lineOf: () => 1, problems };
+  }
+  const names = columns;
+  for (const twice of new Set(names.filter((c, i) => c !== "" && names.indexOf(c) < i))) {
+    problems.push(`${name} line ${lineOf(0)}: column ${shown(twice)} stands twice`);
   }
   return { columns, rows, lineOf: (row) => lineOf(recordOf[row]), problems };
 }
@@ -108,16 +115,27 @@ function isBlank(record: readonly string[]): boolean {
   return record.length === 1 && record[0].trim() === "";
 }
 
+/** Splits text without quotes, record by record, so that only one is held at a time. */
 function splitRecords(text: string, delimiter: string): Records {
-  const lines = text.split(/\r\n|\n|\r/);
-  const records: string[][] = [], lineOf: number[] = [];
-  for (let at = 0; at < lines.length; at++) {
-    const record = lines[at].split(delimiter);
-    if (isBlank(record)) continue;
-    records.push(record);
-    lineOf.push(at + 1);
+  const lines: number[] = [];
+  function* records(): Generator<string[]> {
+    let line = 0;
+    for (let from = 0; from < text.length;) {
+      const found = text.indexOf("\n", from);
+      const end = found < 0 ? text.length : found;
+      const body = text.slice(from, text[end - 1] === "\r" && end > from ? end - 1 : end);
+      from = end + 1;
+      // Lone carriage returns end lines too.
+      for (const one of body.includes("\r") ? body.split("\r") : [body]) {
+        line++;
+        const record = one.split(delimiter);
+        if (isBlank(record)) continue;
+        lines.push(line);
+        yield record;
+      }
+    }
   }
-  return { records, lineOf: (record) => lineOf[record], problems: [] };
+  return { records: records(), lineOf: (record) => lines[record], problems: [] };
 }
 
 function parseRecords(text: string, delimiter: string, name: string): Records {

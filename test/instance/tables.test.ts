@@ -63,7 +63,7 @@ describe("CSV", () => {
         { length: 1 + random.below(8) },
         () => Array.from({ length: 1 + random.below(3) }, () => ["", "x", " y "][random.below(3)]),
       ).map((fields) => fields.join(","));
-      const body = lines.join(["\n", "\r\n"][random.below(2)]);
+      const body = lines.join(["\n", "\r\n", "\r"][random.below(3)]);
       const plain = parseCsv(`id,w\n${body}\n`, "t");
       const quoted = parseCsv(`"id",w\n${body}\n`, "t");
       expect(quoted.rows).toEqual(plain.rows);
