@@ -6,17 +6,25 @@
  */
 import { type CombinedAnswer, type ReducedPiece, reducePiece } from "../reduce/blocks-piece.ts";
 import { Interrupted, Meter } from "../run/meter.ts";
+import { solveBipartite } from "./bipartite.ts";
 import { branch } from "./branch.ts";
 import type { Declined, Engine, EngineName, Piece, Solved } from "./engine.ts";
 import { greedyPacking, greedyStableSet } from "./greedy.ts";
-import { solveBipartite } from "./bipartite.ts";
+import { mip } from "./mip.ts";
+import { solveProjective } from "./projective.ts";
 import { solveByTransversal } from "./transversal.ts";
 
 /** The special engines, in the order in which they are asked. */
 const SPECIAL: readonly (readonly [EngineName, Engine])[] = [
   ["bipartite", solveBipartite],
+  ["projective", solveProjective],
   ["transversal", solveByTransversal],
 ];
+
+/** Work of branch and bound before HiGHS is asked for a better start: about 15 s. */
+const FIRST_BRANCH_WORK = 2 ** 32;
+/** Nodes of HiGHS's tree; a limit that does not depend on the machine's speed. */
+const MIP_NODES = 1000;
 
 export interface PieceResult {
   readonly engine: string;
@@ -99,9 +107,9 @@ async function byEngines(
     why.push(`${name} declined: ${answer.reason}`);
   }
   if (meter.interruption === undefined) {
-    if (only === undefined || only === "branch") {
-      return await byBranching(piece, meter, why);
-    }
+    if (only === undefined) return await byBranching(piece, meter, why);
+    if (only === "branch") return { engine: only, why, solved: await branch(piece, meter) };
+    if (only === "mip") return { engine: only, why, solved: await mip(piece, meter) };
   }
   if (meter.interruption !== undefined) why.push(`the run ended (${meter.interruption})`);
   return { engine: "greedy", why, solved: greedily(piece) };
@@ -121,12 +129,27 @@ async function asked(
   }
 }
 
-async function byBranching(
-  piece: Piece,
-  meter: Meter,
-  why: string[],
-): Promise<PieceResult> {
-  return { engine: "branch", why, solved: await branch(piece, meter) };
+/** Branch and bound under a budget; if that is not enough, again from the best that HiGHS finds. */
+async function byBranching(piece: Piece, meter: Meter, why: string[]): Promise<PieceResult> {
+  const first = await branch(piece, meter.within(FIRST_BRANCH_WORK));
+  if (first.status === "optimal" || meter.interruption !== undefined) {
+    return { engine: "branch", why, solved: first };
+  }
+  why.push("branch and bound did not finish within its first budget of work");
+  const helped = await mip(piece, meter, { start: first, nodeLimit: MIP_NODES });
+  why.push(`mip found ${helped.weight > first.weight ? "a better choice" : "nothing better"}`);
+  const second = meter.interruption === undefined ? await branch(piece, meter, helped) : helped;
+  if (second.status === "optimal") return { engine: "branch", why, solved: second };
+  const { floatingBound } = helped;
+  return {
+    engine: second === helped ? "mip" : "branch",
+    why,
+    solved: {
+      ...second,
+      upperBound: Math.min(first.upperBound, helped.upperBound, second.upperBound),
+      ...(floatingBound !== undefined && { floatingBound }),
+    },
+  };
 }
 
 /** The greedy choice under the better of the half-integral bound and a greedy packing. */
