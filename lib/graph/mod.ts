@@ -21,7 +21,12 @@ export {
 export { type Components, components, componentSubgraphs } from "./components.ts";
 export { type TwoColouring, twoColouring } from "./two-colouring.ts";
 export { type FlowNetwork, type MaxFlow, maxFlow } from "./max-flow.ts";
-export { type Separations, separations, type Side } from "./separations.ts";
+export {
+  type Separations,
+  separations,
+  type SeparationsOptions,
+  type Side,
+} from "./separations.ts";
 export { type Chain, chains } from "./separations-chains.ts";
 export {
   dartEnd,

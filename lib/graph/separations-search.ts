@@ -77,10 +77,10 @@ export class SideSearch {
    * The side around a vertex, grown as far as it goes.
    *
    * @param v a vertex outside the core
-   * @returns the side; "core" when v lies in no side with attachments that are allowed; "twisted" when
-   *   the least set around v is
+   * @returns the side; "core" when v lies in no side, "barred" when the sides found around it hang on
+   *   vertices that may not be attachments, "twisted" when the least set around v is
    */
-  around(v: number): CoverSide | "core" | "twisted" {
+  around(v: number): CoverSide | "core" | "barred" | "twisted" {
     this.#sourceEpoch++;
     this.#source[2 * v] = this.#sourceEpoch;
     const inside = [2 * v];
@@ -122,7 +122,7 @@ export class SideSearch {
       keep();
       i = 0;
     }
-    if (size === 0) return "core";
+    if (size === 0) return "barred";
     return { inside: inside.slice(0, size), attachments: best, twisted };
   }
 

@@ -37,6 +37,8 @@ export interface Separations {
   readonly small: readonly Side[];
   /** Length n: 1 for vertices in none of `sides`. */
   readonly core: Uint8Array;
+  /** Length n: 1 for vertices proved to lie in no side at all. */
+  readonly proven: Uint8Array;
   /** How many sides were left out because they cross one in `sides`. */
   readonly crossing: number;
   /**
@@ -54,11 +56,19 @@ const STAR = [4, 5];
 /** Units of work allowed for each vertex and edge. Grids with thousands of sides take about 100. */
 const WORK_PER_ELEMENT = 2000;
 
+/** What `separations` may be told. */
+export interface SeparationsOptions {
+  /** Length n: 0 for vertices that no side may have as attachments (default: all may). */
+  readonly mayAttach?: Uint8Array;
+  /** Length n: 1 for vertices known to lie in no side (default: none are known). */
+  readonly known?: Uint8Array;
+}
+
 /**
  * Finds sides as large as they come, and the core.
  *
  * @param graph any simple graph
- * @param mayAttach length n: 0 for vertices that no side may have as attachments (default: none)
+ * @param options what is known and what is not wanted
  * @returns disjoint sides, the core, and what was left out. Every side found is one whatever the
  *   graph is like; that no larger ones are missed is proved for graphs without twisted sets.
  *   Near-linear in practice; stops with complete = false after 2000·(n + m) units of work.
@@ -67,9 +77,9 @@ const WORK_PER_ELEMENT = 2000;
 export function separations(
   graph: Graph,
   meter: Meter,
-  mayAttach?: Uint8Array,
+  options: SeparationsOptions = {},
 ): Separations {
-  return new Growing(graph, meter, mayAttach).run();
+  return new Growing(graph, meter, options).run();
 }
 
 class Growing {
@@ -81,16 +91,21 @@ class Growing {
   /** Length n: 1 inside a side, 2 attachment of a side (and outside all), 4 inside one left out. */
   readonly #role: Uint8Array;
   readonly #queued: Uint8Array;
+  readonly #proven: Uint8Array;
   #crossing = 0;
   #twisted = 0;
+  /** Whether the core holds vertices that may lie in a side larger than a star. */
+  #guessed = false;
 
-  constructor(graph: Graph, meter: Meter, mayAttach: Uint8Array | undefined) {
+  constructor(graph: Graph, meter: Meter, { mayAttach, known }: SeparationsOptions) {
     this.#graph = graph;
     this.#workLeft = WORK_PER_ELEMENT * (graph.n + graph.m);
     this.#search = new SideSearch(graph, (units) => {
       this.#workLeft -= units;
       meter.tick(units);
     }, mayAttach);
+    if (known !== undefined) this.#search.core.set(known);
+    this.#proven = this.#search.core.slice();
     this.#role = new Uint8Array(graph.n);
     this.#queued = new Uint8Array(graph.n);
   }
@@ -124,6 +139,7 @@ class Growing {
       sides: this.#sides,
       small: this.#small,
       core: Uint8Array.from(this.#role, (role) => role === 1 ? 0 : 1),
+      proven: this.#proven,
       crossing: this.#crossing,
       twisted: this.#twisted,
       complete,
@@ -133,15 +149,15 @@ class Growing {
   /** Decides what v is. Inner vertices of chains are passed over: they come with their side. */
   #settle(v: number): void {
     const { core } = this.#search;
-    if (degree(this.#graph, v) === 2 || this.#hasFourCoreNeighbours(v)) {
-      if (degree(this.#graph, v) !== 2) core[v] = 1;
-      return;
-    }
-    const found = this.#search.around(v);
-    if (found === "core" || found === "twisted") {
+    if (degree(this.#graph, v) === 2) return;
+    const found = this.#hasFourCoreNeighbours(v) ? "core" : this.#search.around(v);
+    if (typeof found === "string") {
       core[v] = 1;
+      this.#guessed ||= found === "barred";
+      if (found === "core" && !this.#guessed) this.#proven[v] = 1;
       if (found === "twisted") {
         // Room for the sides within the twisted set: its middle stands in for a core.
+        this.#guessed = true;
         this.#twisted++;
         const { offsets, targets } = this.#graph;
         for (let a = offsets[v]; a < offsets[v + 1]; a++) {

@@ -8,7 +8,7 @@
  * so rounds come to an end.
  */
 import type { Graph } from "../graph/graph.ts";
-import { type Separations, separations } from "../graph/separations.ts";
+import { type Separations, separations, type SeparationsOptions } from "../graph/separations.ts";
 import { chains } from "../graph/separations-chains.ts";
 import type { Meter } from "../run/meter.ts";
 import type { Block } from "./blocks-costs.ts";
@@ -23,10 +23,14 @@ export interface Choice {
 
 /**
  * @param graph a simple graph
- * @param mayAttach length n: 0 for vertices that no block may have as attachments (default: none)
+ * @param options vertices that no block may have as attachments, and vertices known to be in none
  */
-export function chooseBlocks(graph: Graph, meter: Meter, mayAttach?: Uint8Array): Choice {
-  const found = separations(graph, meter, mayAttach);
+export function chooseBlocks(
+  graph: Graph,
+  meter: Meter,
+  options: SeparationsOptions = {},
+): Choice {
+  const found = separations(graph, meter, options);
   const taken = new Taken(graph.n);
   const groups = new Map<string, Group>();
   const add = (block: Block, large: boolean): void => {
@@ -41,7 +45,7 @@ export function chooseBlocks(graph: Graph, meter: Meter, mayAttach?: Uint8Array)
   for (const side of found.sides) add(side, true);
   for (const side of found.small) add(side, false);
   for (const { ends, inside } of chains(graph, meter)) {
-    if (ends.some((v) => mayAttach?.[v] === 0)) continue;
+    if (ends.some((v) => options.mayAttach?.[v] === 0)) continue;
     add({
       inside,
       insideSide: Uint8Array.from(inside, (_, i) => 1 - (i & 1)),

@@ -31,13 +31,34 @@ export interface Reduction {
 export function reduceBlocks(start: CostGraph, meter: Meter): Reduction {
   const rounds: Replacing[] = [];
   let now = start;
+  let known: Uint8Array | undefined;
   for (;;) {
-    const { blocks } = chooseBlocks(now.graph, meter);
+    const { blocks, separations } = chooseBlocks(now.graph, meter, { known });
     if (blocks.length === 0) return { rounds, after: now };
     const round = replaceByGadgets(now, blocks, meter);
     rounds.push(round);
+    known = stillKnown(round, separations.proven);
     now = round.after;
   }
+}
+
+/**
+ * Vertices known to lie in no side of what a round leaves. A side there that is none in the graph
+ * before has a gadget's vertex among its attachments; moving that one to an end of the gadget shows
+ * that the side consists of such ends, of gadgets and of what sides there were before. Where a gadget
+ * leaves an attachment out, the graph has come apart and nothing is known.
+ */
+function stillKnown(
+  { before, after, blocks }: Replacing,
+  proven: Uint8Array,
+): Uint8Array | undefined {
+  for (const { block: { attachments }, gadget } of blocks) {
+    if (attachments.length > 1 && gadget.ends.length < attachments.length) return undefined;
+  }
+  const knownById = new Uint8Array(after.nextId);
+  before.ids.forEach((id, v) => knownById[id] = proven[v]);
+  for (const { block } of blocks) for (const v of block.attachments) knownById[before.ids[v]] = 0;
+  return Uint8Array.from(after.ids, (id) => knownById[id]);
 }
 
 /**
