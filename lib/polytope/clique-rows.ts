@@ -106,13 +106,16 @@ export function edgeCliqueCover(graph: Graph, meter?: Meter): number[][] {
  * @param graph a simple graph
  * @param x length n, the point to cut off
  * @param limit most rows to return; the most violated are
+ * @param meter counts the arcs scanned
  * @param epsilon least violation worth a row
  * @returns maximal cliques
+ * @throws {Interrupted} when the meter runs out
  */
 export function violatedCliques(
   graph: Graph,
   x: Float64Array,
   limit: number,
+  meter: Meter,
   epsilon = 0.02,
 ): number[][] {
   const { n, offsets, targets } = graph;
@@ -122,6 +125,7 @@ export function violatedCliques(
     if (x[v] <= 1e-6 || x[v] >= 1 - 1e-6) continue;
     let list = targets.slice(offsets[v], offsets[v + 1]).filter((u) => x[u] > 1e-6);
     list = list.sort((a, b) => x[b] - x[a] || a - b);
+    let scanned = offsets[v + 1] - offsets[v] + 4 * list.length;
     // The heaviest neighbour first, and once more with the second heaviest.
     for (let skip = 0; skip < 2 && skip < list.length; skip++) {
       const clique = [v];
@@ -132,8 +136,11 @@ export function violatedCliques(
         const u = rest[0];
         clique.push(u);
         sum += x[u];
+        scanned += offsets[u + 1] - offsets[u] + size;
         size = near.restrict(rest, size, u);
       }
+      meter.tick(2 * scanned);
+      scanned = 0;
       if (sum < 1 + epsilon) continue;
       const key = clique.slice().sort((a, b) => a - b).join();
       if (!found.has(key)) found.set(key, { clique, violation: sum - 1 });

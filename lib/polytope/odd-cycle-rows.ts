@@ -5,24 +5,32 @@
  * optimization", 1988, chapter 9; written from memory).
  */
 import type { Graph } from "../graph/graph.ts";
+import type { Meter } from "../run/meter.ts";
+
+/** Arcs scanned in one separation, at most so many times n + m. */
+const PATIENCE = 200;
 
 /**
- * Violated odd cycles, at most one through each vertex.
+ * Violated odd cycles: from every fractional vertex not yet on one a search for the odd closed walk of
+ * least slack, until the arcs scanned pass 200·(n + m); so on large graphs some may be missed.
  *
  * @param graph a simple graph
  * @param x length n, edge rows satisfied up to rounding
  * @param limit most cycles to return; the most violated are
+ * @param meter counts the arcs scanned
  * @param epsilon least violation worth a row
- * @returns simple odd cycles of at least five vertices, vertices in order. One bounded
- *   shortest-path search for each fractional vertex.
+ * @returns simple odd cycles of at least five vertices, vertices in order
+ * @throws {Interrupted} when the meter runs out
  */
 export function violatedOddCycles(
   graph: Graph,
   x: Float64Array,
   limit: number,
+  meter: Meter,
   epsilon = 0.02,
 ): number[][] {
-  const { n, offsets, targets } = graph;
+  const { n, m, offsets, targets } = graph;
+  let patience = PATIENCE * (n + m);
   // A cycle of slack below 1 - 2ε; the slack of a cycle is 1 - 2·violation.
   const bound = 1 - 2 * epsilon;
   const dist = new Float64Array(2 * n).fill(Infinity);
@@ -31,14 +39,14 @@ export function violatedOddCycles(
   const found: { cycle: number[]; slack: number }[] = [];
   const touched: number[] = [];
   const fractional = (v: number): boolean => x[v] > 1e-6 && x[v] < 1 - 1e-6;
-  for (let root = 0; root < n; root++) {
+  for (let root = 0; root < n && patience > 0; root++) {
     if (covered[root] !== 0 || !fractional(root)) continue;
     // Nodes of the cover: v and n + v. The walk from root to its copy.
     const heap = new Heap(dist);
     dist[root] = 0;
     touched.push(root);
     heap.push(root);
-    let reached = false;
+    let reached = false, scanned = 1;
     while (heap.size > 0) {
       const at = heap.pop();
       if (at === n + root) {
@@ -46,6 +54,12 @@ export function violatedOddCycles(
         break;
       }
       const v = at % n, flip = at < n ? n : 0;
+      scanned += offsets[v + 1] - offsets[v];
+      if (scanned > 65536) {
+        meter.tick(5 * scanned);
+        patience -= scanned;
+        scanned = 0;
+      }
       for (let a = offsets[v]; a < offsets[v + 1]; a++) {
         const u = targets[a];
         if (!fractional(u)) continue;
@@ -58,6 +72,8 @@ export function violatedOddCycles(
         heap.push(to);
       }
     }
+    meter.tick(5 * scanned);
+    patience -= scanned;
     if (reached) {
       const walk: number[] = [];
       for (let at = n + root; at !== root; at = parent[at]) walk.push(at % n);

@@ -12,12 +12,16 @@ import { CaseTree, proofSize } from "./branch/case-tree.ts";
 import { coverSearch, type SearchResult } from "./branch/cover-search.ts";
 import { relaxationSearch } from "./branch/relaxation-search.ts";
 import type { Piece, Solved } from "./engine.ts";
+import { greedyPacking } from "./greedy.ts";
 import { type Incumbent, localSearch } from "./incumbent.ts";
 
 /** Bit sets of n² bits are made up to this size. */
 const MOST_COVER_VERTICES = 4096;
-/** With more edges than this the relaxation is left out, unless it is the only search. */
-const MOST_RELAXATION_EDGES = 300_000;
+/** With more vertices and edges than this the relaxation is left out: it could not be stopped in time. */
+const MOST_RELAXATION_SIZE = 50_000;
+/** Most work of the first local search; in a piece too large for both searches there is more. */
+const FIRST_LOOK = 2 ** 28;
+const ONLY_LOOK = 2 ** 31;
 /**
  * Budgets of the first turns, in units of work (about 2^18 a millisecond): a short look by covers,
  * which is all that small pieces need, then both in earnest. Later turns grow fourfold and eightfold.
@@ -42,15 +46,14 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
   let total = 0;
   for (let v = 0; v < n; v++) total += weights[v];
 
-  const found = localSearch(
-    graph,
-    weights,
-    meter,
-    Math.min(2 ** 25, 4000 * (n + m)),
-    start?.chosen,
-  );
+  const covers = n <= MOST_COVER_VERTICES;
+  const relaxations = n + m <= MOST_RELAXATION_SIZE;
+  const look = covers || relaxations ? Math.min(FIRST_LOOK, 4000 * (n + m)) : ONLY_LOOK;
+  const found = localSearch(graph, weights, meter, look, start?.chosen);
   let best: Incumbent = start !== undefined && start.weight >= found.weight ? start : found;
-  let upperBound = piece.doubledCosts === undefined ? total : Math.floor(total / 2);
+  const packing = greedyPacking(graph, weights, labels);
+  let upperBound = packing.upperBound;
+  if (piece.doubledCosts !== undefined) upperBound = Math.min(upperBound, Math.floor(total / 2));
   let nodes = 0;
   const solved = (search: string, result?: SearchResult, tree?: CaseTree): Solved => {
     const figures = { nodes, search };
@@ -71,23 +74,27 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
     }
     return { status: "feasible", ...best, upperBound: Math.max(best.weight, upperBound), figures };
   };
-  if (piece.doubledCosts !== undefined && best.weight === upperBound) {
+  if (best.weight === upperBound) {
     return {
       status: "optimal",
       ...best,
       upperBound,
-      proof: packingOf(piece, piece.doubledCosts),
-      figures: { nodes: 0, search: "half-integral relaxation" },
+      proof: upperBound === packing.upperBound
+        ? packing.proof
+        : packingOf(piece, piece.doubledCosts as Float64Array),
+      figures: { nodes: 0, search: "a packing of edges" },
     };
   }
 
-  const covers = n <= MOST_COVER_VERTICES;
-  const relaxations = m <= MOST_RELAXATION_EDGES || !covers;
   let [coverTurn, nextCoverTurn] = relaxations ? FIRST_COVER_TURNS : [Infinity, Infinity];
   let relaxationTurn = covers ? FIRST_RELAXATION_TURN : Infinity;
   let coverOutgrown = !covers, relaxationOutgrown = !relaxations;
   let cliques: number[][] | undefined;
-  while (!(coverOutgrown && relaxationOutgrown)) {
+  for (let round = 0; !(coverOutgrown && relaxationOutgrown); round++) {
+    if (round > 0) {
+      const again = localSearch(graph, weights, meter, look * 2 ** round, best.chosen, round);
+      if (again.weight > best.weight) best = again;
+    }
     if (!coverOutgrown) {
       const tree = new CaseTree();
       const turn = meter.within(relaxationOutgrown ? Infinity : coverTurn);
@@ -124,7 +131,11 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
     await meter.breathe();
     if (meter.interruption !== undefined) break;
   }
-  return solved(`given up with a proof of more than ${MOST_NUMBERS} numbers`);
+  return solved(
+    covers || relaxations
+      ? `given up when the proof had more than ${MOST_NUMBERS} numbers`
+      : "none, the piece is too large",
+  );
 
   function take(result: SearchResult): void {
     nodes += result.nodes;

@@ -27,6 +27,7 @@ export interface Incumbent {
  * @param meter seed and limits of the run; an interruption ends the search, it is not passed on
  * @param work units of work to spend, about one for each arc scanned
  * @param start where to begin, if not with the greedy set; length n, stable
+ * @param variant another path through the same search for each number
  * @returns the heaviest set met; a maximal stable set, except when interrupted at once
  */
 export function localSearch(
@@ -35,10 +36,11 @@ export function localSearch(
   meter: Meter,
   work: number,
   start?: Uint8Array,
+  variant = 0,
 ): Incumbent {
   const search = new Search(graph, weights);
   try {
-    search.run(meter, work, start);
+    search.run(meter, work, start, variant);
   } catch (error) {
     if (!(error instanceof Interrupted)) throw error;
   }
@@ -89,7 +91,7 @@ class Search {
     return { chosen: this.#bestChosen, weight: this.#bestWeight };
   }
 
-  run(meter: Meter, work: number, start?: Uint8Array): void {
+  run(meter: Meter, work: number, start: Uint8Array | undefined, variant: number): void {
     const { n } = this.#graph;
     if (n === 0) return;
     // A scattered arc costs about three arcs scanned in a row.
@@ -106,7 +108,7 @@ class Search {
     this.#keep();
     this.#journal.length = 0;
 
-    const random = new Random(meter.seed ^ 0x51ab);
+    const random = new Random((meter.seed ^ 0x51ab) + 0x9e37 * variant);
     let stale = 0;
     for (let round = 1; work > 0; round++) {
       const before = this.#weight;

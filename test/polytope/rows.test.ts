@@ -3,6 +3,7 @@ import type { Graph } from "../../lib/graph/graph.ts";
 import { graphFromPairs } from "../../lib/graph/graph.ts";
 import { edgeCliqueCover, Neighbours, violatedCliques } from "../../lib/polytope/clique-rows.ts";
 import { simpleOddCycle, violatedOddCycles } from "../../lib/polytope/odd-cycle-rows.ts";
+import { Meter } from "../../lib/run/meter.ts";
 import { Random } from "../../lib/run/random.ts";
 import { randomGraph } from "../support/random-graphs.ts";
 
@@ -73,7 +74,7 @@ describe("clique rows", () => {
       const graph = randomGraph(random, 2 + random.below(25), random.unit());
       const joined = joinedIn(graph);
       const x = relaxedPoint(random, graph);
-      const cliques = violatedCliques(graph, x, 5);
+      const cliques = violatedCliques(graph, x, 5, new Meter());
       expect(cliques.length <= 5).toBe(true);
       for (const clique of cliques) {
         found++;
@@ -135,7 +136,7 @@ describe("odd cycle rows", () => {
         (_, e) => x[graph.tails[e]] + x[graph.heads[e]] <= 1 + 1e-12,
       ).every((ok) => ok);
       if (!feasible) continue;
-      const cycles = violatedOddCycles(graph, x, 100);
+      const cycles = violatedOddCycles(graph, x, 100, new Meter());
       for (const cycle of cycles) {
         found++;
         expect(cycle.length % 2).toBe(1);
@@ -146,7 +147,7 @@ describe("odd cycle rows", () => {
       }
       // Triangles are left to the clique rows.
       const least = leastSlack(graph, x);
-      const triangles = violatedCliques(graph, x, 100).length > 0;
+      const triangles = violatedCliques(graph, x, 100, new Meter()).length > 0;
       if (least < 1 - 2 * 0.021 && !triangles) expect(cycles.length > 0).toBe(true);
     }
     expect(found > 30).toBe(true);
@@ -160,7 +161,7 @@ describe("odd cycle rows", () => {
 
   it("find the pentagon at one half", () => {
     const graph = graphFromPairs(5, [[0, 1], [1, 2], [2, 3], [3, 4], [4, 0]]);
-    const cycles = violatedOddCycles(graph, new Float64Array(5).fill(0.5), 10);
+    const cycles = violatedOddCycles(graph, new Float64Array(5).fill(0.5), 10, new Meter());
     expect(cycles.length).toBe(1);
     expect(cycles[0].slice().sort()).toEqual([0, 1, 2, 3, 4]);
   });

@@ -257,11 +257,10 @@ class RelaxationSearch {
       if (this.#takeIfIntegral(x)) {
         if (evaluation.bound <= this.bestWeight) break;
       }
-      const cliques = violatedCliques(this.#graph, x, ROWS_PER_ROUND);
+      const cliques = violatedCliques(this.#graph, x, ROWS_PER_ROUND, meter);
       const cycles = cliques.length >= ROWS_PER_ROUND / 2
         ? []
-        : violatedOddCycles(this.#graph, x, ROWS_PER_ROUND);
-      meter.tick(8 * (this.#graph.m + this.#graph.n));
+        : violatedOddCycles(this.#graph, x, ROWS_PER_ROUND, meter);
       if (cliques.length + cycles.length === 0) break;
       const first = this.#sets.length;
       for (const clique of cliques) this.#addRow(clique, true);
