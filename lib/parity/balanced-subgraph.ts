@@ -5,7 +5,7 @@ import { Random } from "../run/random.ts";
 
 /** Orders tried on every graph, and on graphs small enough for more. */
 const ORDERS_AT_LEAST = 7;
-const ORDERS_AT_MOST = 40;
+const ORDERS_AT_MOST = 16;
 /** Arcs that the orders beyond the least number may scan. */
 const SCANS = 20_000_000;
 
@@ -18,7 +18,7 @@ const SCANS = 20_000_000;
  * @param even length m, nonzero where an edge is even
  * @param enough a result of so many vertices is not improved upon
  * @returns a transversal, minimal under inclusion, in the order in which its vertices were refused.
- *   O(m α) time times a constant from 7 to 40.
+ *   O(m α) time times a constant from 7 to 16.
  */
 export function greedyTransversal(
   graph: Graph,

@@ -37,7 +37,7 @@ export interface GraphClass {
 }
 
 /** Work spent on a transversal when it is not known whether it has at most twelve vertices. */
-const UNSURE_WORK = 2e9;
+const UNSURE_WORK = 5e8;
 
 /**
  * Classifies a connected graph.
@@ -45,7 +45,7 @@ const UNSURE_WORK = 2e9;
  * @param graph a connected graph, all edges odd
  * @param meter counts about one unit for each arc scanned; when it runs out, what is known returns
  * @returns the class with its witnesses. Where it is not clear that the transversal has at most
- *   twelve vertices, at most 2·10^9 units of work are spent on it.
+ *   twelve vertices, at most 5·10^8 units of work are spent on it.
  */
 export function classifyGraph(graph: Graph, meter: Meter): GraphClass {
   const { side } = twoColouring(graph);

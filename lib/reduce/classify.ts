@@ -172,7 +172,7 @@ const SIZE_HERE = 200_000;
  * @throws {RangeError} for run options that mean nothing
  *
  * Complexity: near-linear, except for transversals that no packing proves: 3^k searches at worst for
- * k items, and at most 2·10^9 units of work where it is not clear that k is at most 12.
+ * k items, and at most 5·10^8 units of work where it is not clear that k is at most 12.
  */
 export async function classify(
   instance: Instance,
