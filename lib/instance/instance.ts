@@ -148,6 +148,33 @@ export class Instance extends Displayable {
     return graph;
   }
 
+  /**
+   * The instance as plain data, which `Instance.from` reads back to the same fingerprint: ids as text,
+   * weights as exact decimals, other columns as they are (a bigint among them as text).
+   */
+  toJSON(): InstanceInput & { readonly kind: "instance" } {
+    const { id, weight } = this.columns;
+    const { m, tails, heads } = this.graph;
+    return {
+      kind: this.kind,
+      name: this.name,
+      unit: this.unit,
+      id,
+      weight,
+      items: this.items.map((row, i) => ({
+        ...Object.fromEntries(
+          Object.entries(row).map(([k, v]) => [k, typeof v === "bigint" ? String(v) : v]),
+        ),
+        [id]: this.ids[i],
+        [weight]: this.decimal(this.weights[i]),
+      })),
+      conflicts: Array.from({ length: m }, (_, e) => ({
+        between: [this.ids[tails[e]], this.ids[heads[e]]] as const,
+        reason: this.reasonsOf(e),
+      })),
+    };
+  }
+
   /** Name, sizes, total worth, the start of the fingerprint, and the notes. */
   override toString(): string {
     let total = 0;

@@ -128,6 +128,32 @@ describe("the checker", () => {
     });
   }
 
+  it("gives instances, verdicts and solutions back as they were written", () => {
+    const odd = Instance.from({
+      name: "Odd rows",
+      unit: "kg",
+      items: [
+        { key: 7, worth: "0.10", note: 5n },
+        { key: "b", worth: 2n },
+        { key: "c", worth: -1e-7 },
+      ],
+      conflicts: [{ between: ["7", "b"], reason: ["same crate", "same day"] }],
+      id: "key",
+      weight: "worth",
+    });
+    const back = fromJson(toJson(odd)) as Instance;
+    expect(back.fingerprint).toBe(odd.fingerprint);
+    expect([back.name, back.unit, back.reasonsOf(0)]).toEqual([
+      "Odd rows",
+      "kg",
+      ["same crate", "same day"],
+    ]);
+    const verdict = check(instance, honest);
+    expect(fromJson(toJson(verdict))).toEqual(verdict);
+    expect(toJson(fromJson(honest))).toBe(honest);
+    expect(() => fromJson('{"kind":"poem"}')).toThrow(/"instance", "solution" or "verdict"/);
+  });
+
   it("rejects what is no solution at all", () => {
     expect(check(instance, "{").reason).toContain("not JSON");
     expect(check(instance, null).reason).toContain('"kind": "solution"');
