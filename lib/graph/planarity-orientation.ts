@@ -94,6 +94,7 @@ function preorder(graph: Graph, meter: Meter) {
       const v = path[depth];
       let a = cursor[v];
       const end = offsets[v + 1];
+      meter.tick(1);
       while (a < end && pre[targets[a]] >= 0) a++;
       cursor[v] = a + 1;
       if (a >= end) {
@@ -106,9 +107,8 @@ function preorder(graph: Graph, meter: Meter) {
       pre[w] = count++;
       path[++depth] = w;
     }
-    meter.tick(1);
   }
-  meter.tick(2 * graph.m);
+  meter.tick(graph.m);
   return { pre, parent, treeEdge };
 }
 

@@ -64,15 +64,22 @@ export function evenFaceEmbedding(
   const local = isScattered(graph) ? breadthFirst(graph) : whole(graph);
   const answer = embed(local.graph, meter);
   if (answer.kind === "embedded") {
-    const next = translatedRotation(answer.next, local);
     // The signature says that the cover is this rotation and its mirror image; so the cover lies in
     // the sphere exactly if H lies in the projective plane.
     const twisted = new Uint8Array(graph.m).fill(1);
     meter.tick(8 * graph.m);
-    if (!isRotationSystem(graph, next) || signedEulerGenus(graph, { next, twisted }) !== 1) {
-      throw new Error("the embedding found is not an even-face embedding");
-    }
-    return { kind: "embedded", next, cover: doubleCover(graph), coverNext: liftRotation(next) };
+    const { next } = answer;
+    if (
+      !isRotationSystem(local.graph, next) ||
+      signedEulerGenus(local.graph, { next, twisted }) !== 1
+    ) throw new Error("the embedding found is not an even-face embedding");
+    const moved = local.graph === graph ? next : translatedRotation(next, local);
+    return {
+      kind: "embedded",
+      next: moved,
+      cover: doubleCover(graph),
+      coverNext: liftRotation(moved),
+    };
   }
   const { reason, culprit } = answer;
   if (culprit === undefined || options.witness === false) return { kind: "no", reason };
