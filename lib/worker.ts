@@ -4,12 +4,20 @@
 import { type Order, type Reply, serve } from "./run/aside.ts";
 import { highsJob } from "./polytope/highs-aside.ts";
 import { classifyJob } from "./reduce/classify.ts";
+import { decomposeJob } from "./reduce/decompose.ts";
+import { replaceBlocksJob } from "./reduce/replace-blocks.ts";
 import { solveJob } from "./solve/solve.ts";
 
 self.onmessage = ({ data }: MessageEvent<Order>) => {
   serve(
     data,
-    { solve: solveJob, highs: highsJob, classify: classifyJob },
+    {
+      solve: solveJob,
+      highs: highsJob,
+      classify: classifyJob,
+      decompose: decomposeJob,
+      "replace blocks": replaceBlocksJob,
+    },
     (reply: Reply) => self.postMessage(reply),
   );
 };

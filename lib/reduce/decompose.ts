@@ -1,15 +1,15 @@
 /** Core and blocks of an instance: its anatomy, for people to read and for `replaceBlocks`. */
-import { componentSubgraphs } from "../graph/components.ts";
-import type { Graph, Subgraph } from "../graph/graph.ts";
-import { twoColouring } from "../graph/two-colouring.ts";
+import { type Graph, graphFromEdges } from "../graph/graph.ts";
 import type { Instance } from "../instance/instance.ts";
-import { evenFaceEmbedding } from "../parity/even-face.ts";
-import { leastTransversal } from "../parity/transversal.ts";
-import { Interrupted, Meter } from "../run/meter.ts";
+import { canWorkAside, type Job, runAside } from "../run/aside.ts";
+import { Meter } from "../run/meter.ts";
 import type { RunOptions } from "../run/options.ts";
 import type { Block } from "./blocks-costs.ts";
-import { blocksOf } from "./decompose-blocks.ts";
+import { type Anatomy, anatomy } from "./decompose-graph.ts";
 import { count, type DecomposedComponent, Decomposition, type ItemBlock } from "./decomposition.ts";
+
+/** Vertices and edges above which a worker is used unless the caller wants none. */
+const SIZE_HERE = 50_000;
 
 /**
  * Splits each component of an instance into its core and the bipartite blocks that hang on at most
@@ -45,19 +45,11 @@ export async function decompose(
   run: RunOptions = {},
 ): Promise<Decomposition> {
   const meter = new Meter(run);
-  const components: DecomposedComponent[] = [];
-  const parts = componentSubgraphs(instance.graph);
-  let done = 0;
-  for (const part of parts) {
-    meter.report("core and blocks", { done, total: instance.size });
-    await meter.breathe();
-    components.push(component(instance, part, meter));
-    done += part.graph.n;
-  }
-  meter.report("core and blocks", { done, total: instance.size }, true);
-  components.sort((a, b) => b.items.length - a.items.length);
+  const { graph } = instance;
+  const aside = run.workers !== 0 && graph.n + graph.m > SIZE_HERE && canWorkAside();
+  const components = await (aside ? anatomyAside(graph, run) : anatomy(graph, meter));
   return new Decomposition({
-    components,
+    components: components.map((component) => named(instance, component)),
     elapsedMs: meter.elapsedMs,
     instance: {
       name: instance.name,
@@ -68,61 +60,72 @@ export async function decompose(
   }, instance);
 }
 
-function component(
+/** What is posted to the worker for the job "decompose". */
+interface Posted {
+  readonly n: number;
+  readonly tails: Int32Array;
+  readonly heads: Int32Array;
+}
+
+async function anatomyAside({ n, tails, heads }: Graph, run: RunOptions): Promise<Anatomy[]> {
+  const posted: Posted = { n, tails, heads };
+  return await runAside(
+    new URL("../worker.ts", import.meta.url),
+    "decompose",
+    posted,
+    run,
+  ) as Anatomy[];
+}
+
+/** The worker's side of `decompose`. */
+export const decomposeJob: Job = async (input, meter) => {
+  const { n, tails, heads } = input as Posted;
+  return await anatomy(graphFromEdges(n, tails, heads), meter);
+};
+
+/** A component in ids. */
+function named(
   instance: Instance,
-  { graph, vertices }: Subgraph,
-  meter: Meter,
+  { vertices, blocks, transversal, evenFace, complete }: Anatomy,
 ): DecomposedComponent {
   const nameOf = (v: number) => instance.ids[vertices[v]];
-  const items = Array.from(vertices, (v) => instance.ids[v]);
-  const { side } = twoColouring(graph);
-  if (side !== undefined) {
-    const whole = itemBlock({
-      inside: Int32Array.from({ length: graph.n }, (_, v) => v),
-      insideSide: side,
-      attachments: new Int32Array(0),
-      attachmentSide: new Uint8Array(0),
-    }, nameOf);
-    return {
-      items,
-      core: [],
-      blocks: [whole],
-      bigSide: false,
-      evenFace: "no",
-      complete: true,
-      note: `${count(graph.n, "item")}: no odd cycle, so there is no core; all is one block`,
-    };
-  }
-  const { blocks, reduced, complete } = blocksOf(graph, meter);
-  const inBlock = new Uint8Array(graph.n);
+  const inBlock = new Uint8Array(vertices.length);
   for (const { inside } of blocks) for (const v of inside) inBlock[v] = 1;
+  const items = Array.from(vertices, (v) => instance.ids[v]);
   const core = items.filter((_, v) => inBlock[v] === 0);
-  // Gadgets change no transversal number, and the graph with gadgets is smaller.
-  const needed = transversalUpTo(reduced, 4, meter);
-  const evenFace = complete ? evenFaceOf(reduced, meter) : "unknown";
-  const bigSide = needed.lower >= 4 ? true : needed.exact ? false : undefined;
-  const parts = [
-    `${count(graph.n, "item")}: a core of ${core.length} and ${count(blocks.length, "block")}`,
-  ];
+  return {
+    items,
+    core,
+    blocks: blocks.map((block) => itemBlock(block, nameOf)),
+    bigSide: transversal === undefined ? undefined : transversal >= 4,
+    evenFace,
+    complete,
+    note: noteOf(items.length, core.length, blocks.length, transversal, evenFace, complete),
+  };
+}
+
+function noteOf(
+  items: number,
+  core: number,
+  blocks: number,
+  transversal: number | undefined,
+  evenFace: Anatomy["evenFace"],
+  complete: boolean,
+): string {
+  const size = count(items, "item");
+  if (transversal === 0) return `${size}: no odd cycle, so there is no core; all is one block`;
+  const parts = [`${size}: a core of ${core} and ${count(blocks, "block")}`];
   if (!complete) parts.push("the search was stopped, so blocks may be missing");
-  if (bigSide === false) {
+  if (transversal !== undefined && transversal < 4) {
     parts.push(
-      `${count(needed.lower, "item")} ${needed.lower === 1 ? "meets" : "meet"} all odd cycles, ` +
+      `${count(transversal, "item")} ${transversal === 1 ? "meets" : "meet"} all odd cycles, ` +
         "so no side is big whatever is taken out",
     );
   }
   if (evenFace === "yes") {
     parts.push("the core with gadgets has an even-face embedding in the projective plane");
   }
-  return {
-    items,
-    core,
-    blocks: blocks.map((block) => itemBlock(block, nameOf)),
-    bigSide,
-    evenFace,
-    complete,
-    note: parts.join("; "),
-  };
+  return parts.join("; ");
 }
 
 function itemBlock(block: Block, nameOf: (v: number) => string): ItemBlock {
@@ -134,24 +137,4 @@ function itemBlock(block: Block, nameOf: (v: number) => string): ItemBlock {
     attachments: Array.from(block.attachments, nameOf),
     sides,
   };
-}
-
-function transversalUpTo(
-  graph: Graph,
-  enough: number,
-  meter: Meter,
-): { lower: number; exact: boolean } {
-  const { lower, upper } = leastTransversal(graph, meter, { limit: enough - 1 });
-  return { lower, exact: lower === upper };
-}
-
-function evenFaceOf(graph: Graph, meter: Meter): DecomposedComponent["evenFace"] {
-  try {
-    const found = evenFaceEmbedding(graph, meter, { witness: false });
-    if (found.kind === "embedded") return "yes";
-    return "no";
-  } catch (error) {
-    if (error instanceof Interrupted) return "unknown";
-    throw error;
-  }
 }

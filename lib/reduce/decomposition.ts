@@ -40,7 +40,7 @@ export interface DecomposedComponent {
 
 /** The data of a decomposition. */
 export interface DecompositionData {
-  /** Largest first. */
+  /** In the order of their first item. */
   readonly components: readonly DecomposedComponent[];
   readonly elapsedMs: number;
   /** The instance: its name, sizes and fingerprint. */
@@ -89,7 +89,8 @@ export class Decomposition extends Displayable implements DecompositionData {
       }; ${count(blocks.length, "block")} with ${count(inBlocks, "item")} inside`,
     ];
     const SHOWN = 5;
-    for (const component of components.slice(0, SHOWN)) lines.push(component.note);
+    const bySize = [...components].sort((a, b) => b.items.length - a.items.length);
+    for (const component of bySize.slice(0, SHOWN)) lines.push(component.note);
     if (components.length > SHOWN) {
       lines.push(`and ${count(components.length - SHOWN, "smaller component")}`);
     }

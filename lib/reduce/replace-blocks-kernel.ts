@@ -4,11 +4,9 @@
  * its own, on the attachments that it still has.
  */
 import { type Graph, inducedSubgraph } from "../graph/graph.ts";
-import type { Instance } from "../instance/instance.ts";
 import { Meter } from "../run/meter.ts";
 import { colouredBlock } from "./blocks-colour.ts";
 import type { Block, CostGraph } from "./blocks-costs.ts";
-import type { Decomposition } from "./decomposition.ts";
 import { gadgetSize } from "./gadgets.ts";
 import { halfIntegralKernel } from "./kernel.ts";
 
@@ -26,9 +24,13 @@ export interface InstanceKernel {
   readonly packing: { readonly edges: readonly number[]; readonly doubled: readonly number[] };
 }
 
-/** The kernel; one maximum flow, which no limit interrupts. */
-export function kernelOf(instance: Instance): InstanceKernel {
-  const { graph, weights, canonical: { rank } } = instance;
+/**
+ * The kernel; one maximum flow, which no limit interrupts.
+ *
+ * @param weights length n, scaled integers of any sign
+ * @param rank length n, the canonical rank of each vertex
+ */
+export function kernelOf(graph: Graph, weights: Float64Array, rank: Int32Array): InstanceKernel {
   // Items worth nothing are never needed.
   const positive = inducedSubgraph(graph, Uint8Array.from(weights, (w) => w > 0 ? 1 : 0));
   const { value, doubledCosts } = halfIntegralKernel(
@@ -65,29 +67,33 @@ export function kernelOf(instance: Instance): InstanceKernel {
 }
 
 /**
- * The blocks of a decomposition as far as the kernel leaves them and they are larger than a gadget.
+ * What of some blocks the kernel leaves, where it is larger than a gadget.
  *
+ * @param n number of items
+ * @param blocks the items inside each block
  * @returns disjoint blocks in vertices of `kernel.start.graph`. O(n + m) time.
  */
-export function survivingBlocks(decomposition: Decomposition, kernel: InstanceKernel): Block[] {
-  const { source } = decomposition;
+export function survivingBlocks(
+  n: number,
+  blocks: readonly Int32Array[],
+  kernel: InstanceKernel,
+): Block[] {
   const { start: { graph }, items } = kernel;
-  const vertexOf = new Int32Array(source.size).fill(-1);
+  const vertexOf = new Int32Array(n).fill(-1);
   items.forEach((item, v) => vertexOf[item] = v);
   const role = new Int32Array(graph.n).fill(-1);
   const unseen = new Uint8Array(graph.n);
   const found: Block[] = [];
   let mark = 0;
-  for (const { blocks } of decomposition.components) {
-    for (const block of blocks) {
-      const left = block.items.map((id) => vertexOf[source.indexOf(id)]).filter((v) => v >= 0);
-      for (const v of left) unseen[v] = 1;
-      for (const root of left) {
-        if (unseen[root] === 0) continue;
-        const { inside, attachments } = pieceFrom(graph, root, unseen, new Set(left));
-        const piece = colouredBlock(graph, inside, attachments, role, mark++);
-        if (isWorthIt(graph, piece)) found.push(piece);
-      }
+  for (const block of blocks) {
+    const left = Array.from(block, (i) => vertexOf[i]).filter((v) => v >= 0);
+    const within = new Set(left);
+    for (const v of left) unseen[v] = 1;
+    for (const root of left) {
+      if (unseen[root] === 0) continue;
+      const { inside, attachments } = pieceFrom(graph, root, unseen, within);
+      const piece = colouredBlock(graph, inside, attachments, role, mark++);
+      if (isWorthIt(graph, piece)) found.push(piece);
     }
   }
   return found;

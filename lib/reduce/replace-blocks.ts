@@ -1,13 +1,18 @@
 /** The gadget instance of a decomposition: the same optimum up to a constant, from fewer items. */
+import { type Graph, graphFromEdges } from "../graph/graph.ts";
+import { canWorkAside, type Job, runAside } from "../run/aside.ts";
 import { exactSum } from "../run/exact.ts";
 import { Interrupted, Meter } from "../run/meter.ts";
 import type { RunOptions } from "../run/options.ts";
 import type { Decomposition } from "./decomposition.ts";
 import { replaceByGadgets, type Replacing } from "./gadgets-apply.ts";
 import { gadgetInstance } from "./replace-blocks-instance.ts";
-import { kernelOf, survivingBlocks } from "./replace-blocks-kernel.ts";
+import { type InstanceKernel, kernelOf, survivingBlocks } from "./replace-blocks-kernel.ts";
 import { liftSolution } from "./replace-blocks-lift.ts";
 import { Replacement } from "./replacement.ts";
+
+/** Vertices and edges above which a worker is used unless the caller wants none. */
+const SIZE_HERE = 50_000;
 
 /**
  * Replaces the blocks of a decomposition by gadgets. Works in the half-integral kernel, where the
@@ -42,31 +47,68 @@ export async function replaceBlocks(
 ): Promise<Replacement> {
   const meter = new Meter(run);
   const original = decomposition.source;
-  meter.report("half-integral kernel", { done: 0, total: original.size }, true);
-  await meter.breathe();
-  const kernel = kernelOf(original);
-  const blocks = survivingBlocks(decomposition, kernel);
-  meter.report("gadgets", { done: 0, total: blocks.length }, true);
-  await meter.breathe();
-  let round: Replacing;
-  try {
-    round = replaceByGadgets(kernel.start, blocks, meter);
-  } catch (error) {
-    if (!(error instanceof Interrupted)) throw error;
-    round = replaceByGadgets(kernel.start, [], new Meter());
-  }
+  const { graph: { n, m, tails, heads }, weights, canonical: { rank } } = original;
+  const blocks = decomposition.components.flatMap((component) =>
+    component.blocks.map((block) => Int32Array.from(block.items, (id) => original.indexOf(id)))
+  );
+  const posted: Posted = { n, tails, heads, weights, rank, blocks };
+  const aside = run.workers !== 0 && n + m > SIZE_HERE && canWorkAside();
+  const { kernel, round } = aside
+    ? await runAside(
+      new URL("../worker.ts", import.meta.url),
+      "replace blocks",
+      posted,
+      run,
+    ) as Done
+    : await inKernel(original.graph, posted, meter);
   const small = gadgetInstance(original, kernel, round);
   let settledWeight = 0;
-  kernel.chosen.forEach((x, i) => settledWeight += x * original.weights[i]);
+  kernel.chosen.forEach((x, i) => settledWeight += x * weights[i]);
   const constant = exactSum(kernel.start.costs) - exactSum(round.after.costs);
   const unitsPer = 2 * original.scale;
-  meter.report("gadgets", { done: blocks.length, total: blocks.length }, true);
   return new Replacement({
     instance: small.instance,
     unitsPer,
     offset: (2 * settledWeight + constant) / unitsPer,
     gadgets: small.gadgets,
-    settled: original.size - kernel.items.length,
+    settled: n - kernel.items.length,
     elapsedMs: meter.elapsedMs,
   }, (solution) => liftSolution(original, kernel, round, small, solution));
+}
+
+/** What is posted to the worker for the job "replace blocks". */
+interface Posted {
+  readonly n: number;
+  readonly tails: Int32Array;
+  readonly heads: Int32Array;
+  readonly weights: Float64Array;
+  readonly rank: Int32Array;
+  readonly blocks: readonly Int32Array[];
+}
+
+/** What comes back; all of it is plain data. */
+interface Done {
+  readonly kernel: InstanceKernel;
+  readonly round: Replacing;
+}
+
+/** The worker's side of `replaceBlocks`. */
+export const replaceBlocksJob: Job = async (input, meter) => {
+  const posted = input as Posted;
+  return await inKernel(graphFromEdges(posted.n, posted.tails, posted.heads), posted, meter);
+};
+
+async function inKernel(graph: Graph, posted: Posted, meter: Meter): Promise<Done> {
+  meter.report("half-integral kernel", { done: 0, total: graph.n }, true);
+  await meter.breathe();
+  const kernel = kernelOf(graph, posted.weights, posted.rank);
+  const blocks = survivingBlocks(graph.n, posted.blocks, kernel);
+  meter.report("gadgets", { done: 0, total: blocks.length }, true);
+  await meter.breathe();
+  try {
+    return { kernel, round: replaceByGadgets(kernel.start, blocks, meter) };
+  } catch (error) {
+    if (!(error instanceof Interrupted)) throw error;
+    return { kernel, round: replaceByGadgets(kernel.start, [], new Meter()) };
+  }
 }
