@@ -1,6 +1,6 @@
 import { readFileSync } from "node:fs";
 import { describe, expect, it } from "vitest";
-import { components } from "../../lib/graph/components.ts";
+import { components, componentSubgraphs } from "../../lib/graph/components.ts";
 import { traceSignedFaces } from "../../lib/graph/embedding.ts";
 import { type Graph, graphFromEdges, graphFromPairs } from "../../lib/graph/graph.ts";
 import { planarRotation } from "../../lib/graph/planarity.ts";
@@ -108,6 +108,26 @@ describe("evenFaceEmbedding on families", () => {
         expect(recognise(shuffled(mirroredGrid(rows, columns), random))).toBe("embedded");
       }
     }
+  });
+
+  it("embeds what is left of a mirrored grid when vertices and edges are missing", () => {
+    const random = new Random(37);
+    let turned = 0, pieces = 0;
+    for (let t = 0; t < 400; t++) {
+      const rows = 3 + random.below(10), columns = rows % 2 + 2 * (1 + random.below(5));
+      const grid = mirroredGrid(rows, columns), missing = random.unit() / 3;
+      const kept = pairsOf(grid).filter(() => random.unit() >= missing);
+      const keep = Uint8Array.from({ length: grid.n }, () => random.unit() >= missing / 4 ? 1 : 0);
+      for (const { graph } of componentSubgraphs(graphFromPairs(grid.n, kept), keep)) {
+        if (twoColouring(graph).side !== undefined) continue;
+        pieces++;
+        expect(recognise(graph)).toBe("embedded");
+        const coverNext = planarRotation(doubleCover(graph), new Meter());
+        if (coverNext !== undefined && !isAntipodal(coverNext)) turned++;
+      }
+    }
+    expect(pieces).toBeGreaterThan(200);
+    expect(turned).toBeGreaterThan(50);
   });
 
   it("turns patches behind two vertices the right way, where the planarity test did not", () => {
