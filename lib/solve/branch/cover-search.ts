@@ -167,6 +167,9 @@ class CoverSearch {
     let at = node;
     for (let i = count - 1; i >= 0; i--) {
       this.stopped ||= this.#interrupted();
+      if (depth < 3) {
+        this.#meter.report("cases", { done: this.nodes, lower: this.bestWeight });
+      }
       // Open now: this case and those not begun, all within the cover and the uncovered rest.
       if (this.stopped) return weight + used + surplus;
       const p = branch[i], row = p * words;
