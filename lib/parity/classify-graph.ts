@@ -83,7 +83,7 @@ export function classifyGraph(graph: Graph, meter: Meter): GraphClass {
   }
   const quick = leastTransversal(graph, meter, { limit: 3 });
   const packing = oddCyclePacking(graph, meter, quick);
-  const transversal = closer(graph, quick, meter);
+  const transversal = closer(graph, raised(quick, packing, meter), meter);
   return {
     kind: kindOf(transversal, packing),
     transversal,
@@ -93,7 +93,8 @@ export function classifyGraph(graph: Graph, meter: Meter): GraphClass {
 }
 
 /** The packing's bounds with what a later transversal adds. */
-function tightened(packing: OddCyclePacking, transversal: Transversal): OddCyclePacking {
+function tightened(found: OddCyclePacking, transversal: Transversal): OddCyclePacking {
+  const { embedded: _, ...packing } = found;
   const { cycles, upper } = transversal;
   const better = packing.lower < cycles.length
     ? { ...packing, lower: cycles.length, cycles }
@@ -109,6 +110,15 @@ function tightened(packing: OddCyclePacking, transversal: Transversal): OddCycle
 function kindOf(transversal: Transversal, packing: OddCyclePacking | undefined): GraphKind {
   if (packing?.upper === 1 && transversal.lower > 3) return "projective";
   return transversal.upper <= EXACT_UP_TO ? "near-bipartite" : "general";
+}
+
+/** The transversal with the lower bound that an embedding after the replacement of blocks gives. */
+function raised(quick: Transversal, packing: OddCyclePacking, meter: Meter): Transversal {
+  if (packing.embedded === undefined) return quick;
+  const { graph, embedding } = packing.embedded;
+  const { lower } = embeddedTransversal(graph, embedding, meter);
+  const { stopped, ...bounds } = { ...quick, lower: Math.max(quick.lower, lower) };
+  return stopped === undefined || bounds.lower === bounds.upper ? bounds : { ...bounds, stopped };
 }
 
 /** The transversal, exact where it has at most twelve vertices. */

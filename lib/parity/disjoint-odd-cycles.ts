@@ -9,8 +9,8 @@
  *   do not agree; so it suffices to colour one vertex of X, in each of the two ways, without its
  *   edges to its own colour.
  * - k >= 4: no, exactly if there is an even-face embedding in the projective plane once every side
- *   that at most three vertices cut off is replaced by even or odd edges between these (two disjoint
- *   odd cycles theorem, attributed to Lovász; K. Kawarabayashi and K. Ozeki, "A simpler proof for
+ *   that at most three vertices cut off is replaced by an edge between them, or a star, with edges
+ *   of the right parity (two disjoint odd cycles theorem, attributed to Lovász; K. Kawarabayashi and K. Ozeki, "A simpler proof for
  *   the two disjoint odd cycles theorem", J. Combin. Theory B 103, 2013).
  *
  * Near-linear in practice.
@@ -21,6 +21,7 @@ import { separations } from "../graph/separations.ts";
 import type { Meter } from "../run/meter.ts";
 import { balance } from "./balance.ts";
 import { evenFaceEmbedding } from "./even-face.ts";
+import type { EvenFaceEmbedding } from "./even-face-result.ts";
 import { linked } from "./linkage.ts";
 import { allOdd, type OddKernel, oddKernel } from "./odd-kernel.ts";
 import { transversalWithin } from "./transversal.ts";
@@ -31,6 +32,11 @@ export interface TwoDisjoint {
   readonly exist: boolean | undefined;
   /** Completes "…, because". */
   readonly because: string;
+  /**
+   * Where an even-face embedding settled it: no transversal has fewer vertices than a least one of
+   * this graph.
+   */
+  readonly embedded?: { readonly graph: Graph; readonly embedding: EvenFaceEmbedding };
 }
 
 /**
@@ -138,9 +144,13 @@ function throughTwo(
 /** The question for graphs that need four vertices or more to be made bipartite. */
 function beyondThree(start: Graph, startEven: Uint8Array, meter: Meter): TwoDisjoint {
   let graph = allOdd(start, startEven);
-  for (;;) {
-    if (evenFaceEmbedding(graph, meter, { witness: false }).kind === "embedded") {
-      return { exist: false, because: "it has an even-face embedding in the projective plane" };
+  for (let replaced = false;; replaced = true) {
+    const embedding = evenFaceEmbedding(graph, meter, { witness: false });
+    if (embedding.kind === "embedded") {
+      const because = replaced
+        ? "it has an even-face embedding in the projective plane once its blocks are replaced"
+        : "it has an even-face embedding in the projective plane";
+      return { exist: false, because, embedded: { graph, embedding } };
     }
     const { sides, small, twisted, complete } = separations(graph, meter);
     if (twisted > 0) return { exist: true, because: "three items leave two parts with odd cycles" };
@@ -159,7 +169,9 @@ function beyondThree(start: Graph, startEven: Uint8Array, meter: Meter): TwoDisj
 }
 
 /**
- * Replaces sides by edges between their attachments.
+ * Replaces sides with two attachments by an edge and those with three by a star. A transversal with
+ * one vertex inside a side may take the star's middle instead, one with more two attachments; so the
+ * transversals do not become larger.
  *
  * @returns the odd kernel of what is left; undefined where odd cycles fall into separate parts
  */
@@ -168,27 +180,30 @@ function withoutSides(
   sides: ReturnType<typeof separations>["sides"],
   meter: Meter,
 ): Graph | undefined {
-  const keep = new Uint8Array(graph.n).fill(1);
+  const keep = new Uint8Array(graph.n).fill(1), alone = new Uint8Array(graph.n);
   const tails: number[] = [], heads: number[] = [], even: number[] = [];
   for (const { inside, attachments, attachmentSide } of sides) {
     for (const v of inside) keep[v] = 0;
-    for (let i = 0; i < attachments.length; i++) {
-      for (let j = 0; j < i; j++) {
-        tails.push(attachments[i]);
-        heads.push(attachments[j]);
-        even.push(attachmentSide[i] === attachmentSide[j] ? 1 : 0);
-      }
+    // The first inner vertex stays as the middle of the star, on the side of the first attachment.
+    if (attachments.length === 3) keep[inside[0]] = 1;
+    const middle = attachments.length === 3 ? inside[0] : attachments[0];
+    for (let i = attachments.length === 3 ? 0 : 1; i < attachments.length; i++) {
+      tails.push(middle);
+      heads.push(attachments[i]);
+      even.push(attachmentSide[i] === attachmentSide[0] ? 1 : 0);
     }
   }
+  for (const { inside, attachments } of sides) if (attachments.length === 3) alone[inside[0]] = 1;
   const rest = inducedSubgraph(graph, keep);
   const index = new Int32Array(graph.n).fill(-1);
   rest.vertices.forEach((v, i) => index[v] = i);
+  const own = rest.edges.filter((e) => alone[graph.tails[e]] === 0 && alone[graph.heads[e]] === 0);
   const joined = graphFromEdges(
     rest.graph.n,
-    Int32Array.from([...rest.graph.tails, ...tails.map((v) => index[v])]),
-    Int32Array.from([...rest.graph.heads, ...heads.map((v) => index[v])]),
+    Int32Array.from([...own.map((e) => index[graph.tails[e]]), ...tails.map((v) => index[v])]),
+    Int32Array.from([...own.map((e) => index[graph.heads[e]]), ...heads.map((v) => index[v])]),
   );
-  const parity = Uint8Array.from([...new Uint8Array(rest.graph.m), ...even]);
+  const parity = Uint8Array.from([...new Uint8Array(own.length), ...even]);
   const kernel = oddKernel(joined, meter, undefined, parity);
   const parts = componentSubgraphs(kernel.graph).filter(({ graph, edges }) =>
     balance(graph, evenOf(kernel, edges)).side === undefined

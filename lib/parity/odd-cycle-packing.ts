@@ -6,7 +6,7 @@
 import { components } from "../graph/components.ts";
 import type { Graph } from "../graph/graph.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
-import { twoDisjointOddCycles } from "./disjoint-odd-cycles.ts";
+import { type TwoDisjoint, twoDisjointOddCycles } from "./disjoint-odd-cycles.ts";
 import { oddCyclePair } from "./odd-cycle-pair.ts";
 import { leastTransversal, type Transversal } from "./transversal.ts";
 
@@ -20,6 +20,11 @@ export interface OddCyclePacking {
   readonly cycles: readonly Int32Array[];
   /** What settled the bounds; completes "…, because". */
   readonly because: string;
+  /**
+   * Where an even-face embedding after the replacement of blocks settled it: no odd cycle transversal
+   * has fewer vertices than a least one of this embedded graph.
+   */
+  readonly embedded?: TwoDisjoint["embedded"];
   /** Why the run ended before 0, 1 or at least 2 was decided, or before two cycles were found. */
   readonly stopped?: "time" | "stop" | "work";
 }
@@ -57,11 +62,14 @@ export function oddCyclePacking(
     return { ...found, because };
   }
   if (cycles.length >= 2) return { ...found, because: "disjoint odd cycles were found" };
-  let answer: ReturnType<typeof twoDisjointOddCycles> | undefined;
+  let answer: TwoDisjoint | undefined;
   try {
     answer = twoDisjointOddCycles(graph, meter);
     if (answer.exist === undefined) return { ...found, because: answer.because };
-    if (!answer.exist) return { ...found, upper: 1, because: answer.because };
+    if (!answer.exist) {
+      const { because, embedded } = answer;
+      return { ...found, upper: 1, because, ...(embedded !== undefined && { embedded }) };
+    }
     const pair = oddCyclePair(graph, meter, transversal.vertices);
     return { ...found, lower: 2, cycles: pair, because: answer.because };
   } catch (error) {
