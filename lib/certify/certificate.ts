@@ -174,8 +174,7 @@ export interface ProjectiveProof {
   /** The cost of a least one-sided directed cycle of the dual, in units. */
   readonly distance: number;
   /**
-   * The searches in preorder of a tree: the source (its number in `sources`) each starts from, at the
-   * lift for which the potential says more (the one named, if it says the same of both), …
+   * The searches in preorder of a tree: the source (its number in `sources`) each serves, …
    */
   readonly starts: Numbers;
   /** … how deep it stands in the tree, roots at 0, … */

@@ -1,17 +1,14 @@
 /**
  * Repeats the searches of a proof and reads off what distances they prove. The searches stand in a
- * tree; each uses the potential its parent left, and what it changes is undone for its siblings.
+ * tree; each works on the potential its parent left, and what it changes is undone for its siblings.
  *
- * A potential p has p(x) <= c(x→y) + p(y) on every arc, so d(x, z) >= p(x) - p(z). The first is 0.
- * Dijkstra's method from s on the reduced costs c(x→y) + p(y) - p(x) >= 0 settles the faces whose
- * reduced distance r(x) is at most `limit`; their distance from s is r(x) - p(x) + p(s). Then
- *
- *     p'(x) = limit + p(s) - p(x) - max(0, limit - r(x))
- *
- * is a potential once all arcs are reversed: it is the smaller of two, the distance from s and
- * limit + p(s) - p. So the searches alternate between the two directions. As swapping the sheets
- * keeps arcs and costs, d(x, x̄) = d(x̄, x) in both directions, and every potential proves
- * d(x, x̄) >= |p(x) - p(x̄)|. For s itself this is d(s, s̄), if s̄ was settled.
+ * A potential a has a(x) <= c(x→y) + a(y) on every arc, so d(x, z) >= a(x) - a(z). The first is 0.
+ * Dijkstra's method from s on the reduced costs c(x→y) + a(y) - a(x) >= 0 gives reduced distances
+ * r(x). Raising a(x) by max(0, limit - r(x)) everywhere keeps it a potential, since r(y) is at most
+ * r(x) plus the reduced cost of x→y; faces at the limit or beyond need not be looked at. This is a
+ * search forward, at even depth. At odd depth a search goes backward, against the arcs, and lowers
+ * a(x) likewise. Swapping the sheets keeps arcs and costs, so d(x, x̄) = d(x̄, x), and every potential
+ * proves d(x, x̄) >= |a(x) - a(x̄)|.
  */
 import { BucketQueue, HeapQueue, type MonotoneQueue } from "../graph/heap.ts";
 import type { ProjectiveProof } from "./certificate.ts";
@@ -73,20 +70,17 @@ export function provenDistances(
 }
 
 class Searches {
-  /** The potential is sign·a + constant. */
-  readonly #a: Float64Array;
-  #sign = 1;
-  /** Reduced distances of the search at work; `Infinity` outside of it. */
-  readonly #reduced: Float64Array;
+  /** For face x the potential a(x) at 2x, and at 2x + 1 its reduced distance during a search. */
+  readonly #state: Float64Array;
   readonly #queue: MonotoneQueue;
-  /** For each search: the faces it changed and what their entries were. */
+  /** For each search: the faces it changed and their former potentials. */
   readonly #done: { faces: Int32Array; former: Float64Array }[] = [];
-  #touched: Int32Array;
+  readonly #touched: Int32Array;
 
   constructor(readonly dual: SphereDual, span: number) {
     const faces = 2 * dual.pairs;
-    this.#a = new Float64Array(faces);
-    this.#reduced = new Float64Array(faces).fill(Infinity);
+    this.#state = new Float64Array(2 * faces);
+    for (let x = 0; x < faces; x++) this.#state[2 * x + 1] = Infinity;
     this.#touched = new Int32Array(faces);
     this.#queue = span <= MOST_BUCKETS ? new BucketQueue(span) : new HeapQueue();
   }
@@ -97,53 +91,52 @@ class Searches {
 
   /** What the potential proves for the distance between x and its antipode. */
   difference(x: number): number {
-    return Math.abs(this.#a[x] - this.#a[x ^ 1]);
+    return Math.abs(this.#state[2 * x] - this.#state[2 * (x ^ 1)]);
   }
 
-  search(start: number, limit: number, where: string): void {
-    const { offsets, ends, costs } = this.depth % 2 === 0 ? this.dual.out : this.dual.into;
-    const a = this.#a, reduced = this.#reduced, queue = this.#queue, touched = this.#touched;
-    const sign = this.#sign;
-    // From the lift for which the potential at hand says more; if both are equal, the one named.
-    const source = sign * (a[start] - a[start ^ 1]) >= 0 ? start : start ^ 1;
-    let count = 0, settled = 0, last = 0;
+  /** A search that serves face x: from x or its antipode, whichever the potential says more for. */
+  search(x: number, limit: number, where: string): void {
+    const backward = this.depth % 2 === 1;
+    const { offsets, ends, costs } = backward ? this.dual.into : this.dual.out;
+    const state = this.#state, queue = this.#queue, touched = this.#touched;
+    const source = (state[2 * x] >= state[2 * (x ^ 1)]) === backward ? x ^ 1 : x;
+    let count = 1, settled = 0, last = 0;
     queue.clear();
-    reduced[source] = 0;
-    touched[count++] = source;
+    state[2 * source + 1] = 0;
+    touched[0] = source;
     queue.push(0, source);
-    for (let x = queue.pop(); x >= 0; x = queue.pop()) {
+    for (let near = queue.pop(); near >= 0; near = queue.pop()) {
       const r = queue.key;
-      if (reduced[x] !== r) continue;
+      if (state[2 * near + 1] !== r) continue;
       if (r < last) throw new Error("internal: the queue is out of order");
       last = r;
       settled++;
-      const flip = x & 1, base = r - sign * a[x], row = x >> 1;
+      const flip = near & 1, at = state[2 * near], row = near >> 1;
       for (let arc = offsets[row]; arc < offsets[row + 1]; arc++) {
-        const y = ends[arc] ^ flip, reached = base + costs[arc] + sign * a[y];
+        const far = ends[arc] ^ flip, rise = state[2 * far] - at;
+        const reached = r + costs[arc] + (backward ? -rise : rise);
         if (reached < r) throw new Error(`internal: ${where}: not a potential`);
-        if (reached > limit || reached >= reduced[y]) continue;
-        if (reduced[y] === Infinity) touched[count++] = y;
-        reduced[y] = reached;
-        queue.push(reached, y);
+        if (reached > limit || reached >= state[2 * far + 1]) continue;
+        if (state[2 * far + 1] === Infinity) touched[count++] = far;
+        state[2 * far + 1] = reached;
+        queue.push(reached, far);
       }
     }
     // Every face within the limit was settled with its final value, whatever the queue did.
     if (settled !== count) throw new Error("internal: the queue lost a face");
     const faces = touched.slice(0, count), former = new Float64Array(count);
     for (let i = 0; i < count; i++) {
-      const x = faces[i];
-      former[i] = a[x];
-      a[x] += sign * (limit - reduced[x]);
-      reduced[x] = Infinity;
+      const y = faces[i], raised = limit - state[2 * y + 1];
+      former[i] = state[2 * y];
+      state[2 * y] += backward ? -raised : raised;
+      state[2 * y + 1] = Infinity;
     }
     this.#done.push({ faces, former });
-    this.#sign = -sign;
   }
 
   /** Takes the last search back. */
   undo(): void {
     const { faces, former } = this.#done.pop()!;
-    for (let i = 0; i < faces.length; i++) this.#a[faces[i]] = former[i];
-    this.#sign = -this.#sign;
+    for (let i = 0; i < faces.length; i++) this.#state[2 * faces[i]] = former[i];
   }
 }

@@ -1,18 +1,18 @@
 /**
  * The least-cost one-sided directed cycle of the dual, with the plan of searches that proves it.
  *
- * For every face x of a one-sided curve the distance d(x, x̄) to its antipode is either bounded below
- * through a potential or found by a search. The searches form a tree: the first one looks at the
- * whole sphere, each further one takes the middle of the sources that are still open on one side of
- * its parent, with the parent's potential. Near the parent that bound is close, so a search deep in
- * the tree looks at a small part of the sphere. In practice the work grows little faster than the
- * sphere; at worst it is one Dijkstra search, O(m log m), for each source.
+ * For every face x of a one-sided curve the distance d(x, x̄) to its antipode is bounded from below by
+ * a potential. The searches form a tree: the first one looks at the whole sphere, each further one
+ * serves the middle of the sources that are still open on one side of its parent, and improves the
+ * parent's potential. Near the parent that is good already, so a search deep in the tree looks at
+ * a small part of the sphere. In practice the work grows little faster than the sphere; at worst it is
+ * one Dijkstra search, O(m log m), for each source.
  */
 import type { Graph } from "../../graph/graph.ts";
 import { HeapQueue } from "../../graph/heap.ts";
 import type { Meter } from "../../run/meter.ts";
 import type { DirectedDual } from "./directed-dual.ts";
-import { NARROW_LIMIT, PotentialChain, TooWide } from "./potential-chain.ts";
+import { NARROW_LIMIT, Potential, TooWide } from "./potential.ts";
 import { queueFor, type SourceCurve } from "./source-curve.ts";
 
 /** The answer and how to check it. */
@@ -27,9 +27,9 @@ export interface LeastCycle {
 
 /** Parallel arrays, one entry for each search. */
 export interface SearchPlan {
-  /** Which source (index into the curve's faces) the search starts from. */
+  /** Which source (index into the curve's faces) the search serves. */
   readonly sources: number[];
-  /** Depth in the tree: 0 for a root; children stand after their parent. */
+  /** Depth in the tree: 0 for a root; what is below stands after it. */
   readonly depths: number[];
   /** Largest reduced distance settled. */
   readonly limits: number[];
@@ -39,7 +39,7 @@ export interface SearchPlan {
  * How far beyond what its own source needs a search goes, so that its children stay inside what it
  * settled: a fraction of the bound on the way to them and back. Measured on mirrored grids.
  */
-const REACH = 0.6;
+const REACH = 0.5;
 
 /**
  * Finds a least one-sided cycle.
@@ -67,16 +67,16 @@ export function leastOneSidedCycle(
   if (span < NARROW_LIMIT) {
     try {
       const queue = queueFor(span, dual.pairs);
-      return runSearches(new PotentialChain(dual, queue, false), curve, step, meter);
+      return runSearches(new Potential(dual, queue, false), curve, step, meter);
     } catch (error) {
       if (!(error instanceof TooWide)) throw error;
     }
   }
-  return runSearches(new PotentialChain(dual, new HeapQueue(), true), curve, step, meter);
+  return runSearches(new Potential(dual, new HeapQueue(), true), curve, step, meter);
 }
 
 function runSearches(
-  chain: PotentialChain,
+  potential: Potential,
   curve: SourceCurve,
   step: number,
   meter: Meter,
@@ -84,18 +84,15 @@ function runSearches(
   const { faces, positions } = curve;
   const plan: SearchPlan = { sources: [], depths: [], limits: [] };
   const proven = new Uint8Array(faces.length);
-  let cost = Infinity, crossed: number[] = [], done = 0;
+  let cost = Infinity, crossed: number[] = [];
   prove(0, faces.length);
   return { cost, crossed, plan };
 
   /** Proves the sources from low to high - 1. The depth of the recursion is logarithmic. */
   function prove(low: number, high: number): void {
+    noteProven();
     const open: number[] = [];
-    for (let i = low; i < high; i++) {
-      // The least cost may have fallen since the potential was set up.
-      if (chain.bound(faces[i]) > cost - step) proven[i] = 1;
-      if (proven[i] === 0) open.push(i);
-    }
+    for (let i = low; i < high; i++) if (proven[i] === 0) open.push(i);
     if (open.length === 0) return;
     const middle = open[open.length >> 1];
     const left = open[open.length >> 2], right = open[(3 * open.length) >> 2];
@@ -104,27 +101,29 @@ function runSearches(
       positions[right] - positions[middle],
     );
     const beyond = Math.floor(REACH * away);
-    const bound = chain.bound(faces[middle]), source = chain.start(faces[middle]);
-    // Reaching this limit, the potential proves a distance above cost - step.
-    const limit = cost - step + 1 - bound + beyond;
-    const found = bound + chain.search(source, limit, beyond, meter);
+    // At a limit with beyond = 0 the potential proves a distance just above cost - step.
+    const limit = cost - step + 1 - potential.bound(faces[middle]) + beyond;
+    const found = potential.search(faces[middle], limit, beyond, meter);
     if (found < cost) {
       cost = found;
-      crossed = chain.pathFrom(source);
+      crossed = potential.path();
     }
     plan.sources.push(middle);
-    plan.depths.push(chain.depth);
-    plan.limits.push(chain.limit);
-    chain.advance();
-    proven[middle] = 1;
+    plan.depths.push(potential.depth);
+    plan.limits.push(potential.limit);
+    potential.advance();
+    prove(low, middle);
+    prove(middle + 1, high);
+    potential.retreat();
+  }
+
+  /** Marks the sources that the potential, with the least cost known by now, proves. */
+  function noteProven(): void {
+    let done = 0;
     for (let i = 0; i < faces.length; i++) {
-      if (proven[i] === 0 && chain.bound(faces[i]) > cost - step) proven[i] = 1;
+      if (proven[i] === 0 && potential.bound(faces[i]) > cost - step) proven[i] = 1;
       done += proven[i];
     }
     meter.report("shortest one-sided cycle", { done, total: faces.length });
-    done = 0;
-    prove(low, middle);
-    prove(middle + 1, high);
-    chain.retreat();
   }
 }

@@ -1,7 +1,7 @@
 /**
  * Where least cycles are looked for: a closed one-sided curve through faces and vertices of the
  * embedding. Every one-sided cycle of the dual meets it, and can meet it only in a face, so the faces
- * on the curve serve as sources. O(m log m) time for each of a few rounds.
+ * on the curve serve as sources. O(m log m) time.
  *
  * To go from one face at a vertex to any other and back costs at most what going once around the
  * vertex costs. A curve is short when these costs are: then the distances from one source tell much
@@ -22,16 +22,12 @@ export interface SourceCurve {
   readonly length: number;
 }
 
-/** The curve is started anew from the middle of the last one, while it gets shorter, so often. */
-const ROUNDS = 4;
-
 /**
- * Finds a short one-sided curve: the shortest through a face, then through its own middle.
+ * Finds a short one-sided curve: through the middle of one with few vertices, the shortest there is.
  *
  * @param graph H
  * @param next length 2m, its rotation system
  * @param around length n, what the dual arcs around each vertex cost together, integers > 0
- * @returns a curve at most twice as long as the shortest through any face of it
  */
 export function sourceCurve(
   graph: Graph,
@@ -40,14 +36,9 @@ export function sourceCurve(
   around: Float64Array,
   meter: Meter,
 ): SourceCurve {
-  const search = new CurveSearch(graph, next, dual, around);
-  let best = search.through(0, meter);
-  for (let round = 1; round < ROUNDS; round++) {
-    const again = search.through(best.faces[best.faces.length >> 1], meter);
-    if (again.length >= best.length) break;
-    best = again;
-  }
-  return best;
+  const search = new CurveSearch(graph, next, dual);
+  const few = search.through(0, new Float64Array(graph.n).fill(1), meter);
+  return search.through(few.faces[few.faces.length >> 1], around, meter);
 }
 
 /** Shortest paths over faces and vertices of the sphere, where passing a vertex costs going around it. */
@@ -56,7 +47,6 @@ class CurveSearch {
   readonly #from: Int32Array;
   /** Length 2n: whether vertex (v,s) has been passed, at 2v + s. */
   readonly #passed: Uint8Array;
-  readonly #queue: MonotoneQueue;
   /** Length pairs: a dart with the face 2k on its left. */
   readonly #dartOf: Int32Array;
 
@@ -64,7 +54,6 @@ class CurveSearch {
     readonly graph: Graph,
     readonly next: Int32Array,
     readonly dual: DirectedDual,
-    readonly around: Float64Array,
   ) {
     const { pairs, left } = dual;
     this.#distance = new Float64Array(2 * pairs);
@@ -74,17 +63,20 @@ class CurveSearch {
     for (let d = left.length - 1; d >= 0; d--) {
       if ((left[d] & 1) === 0) this.#dartOf[left[d] >> 1] = d;
     }
-    let span = 0;
-    for (let v = 0; v < graph.n; v++) if (around[v] > span) span = around[v];
-    this.#queue = queueFor(span, pairs);
   }
 
-  /** The shortest curve through one face. */
-  through(root: number, meter: Meter): SourceCurve {
-    const { graph, next, dual: { left, prev }, around } = this;
+  /**
+   * The shortest curve through one face.
+   *
+   * @param around length n, what passing each vertex costs
+   */
+  through(root: number, around: Float64Array, meter: Meter): SourceCurve {
+    const { graph, next, dual: { left, prev, pairs } } = this;
     const distance = this.#distance.fill(Infinity), passed = this.#passed.fill(0);
-    const from = this.#from, queue = this.#queue;
-    queue.clear();
+    const from = this.#from;
+    let span = 0;
+    for (let v = 0; v < graph.n; v++) if (around[v] > span) span = around[v];
+    const queue = queueFor(span, pairs);
     distance[root] = 0;
     queue.push(0, root);
     for (let x = queue.pop(); x !== (root ^ 1); x = queue.pop()) {
