@@ -19,3 +19,4 @@ export { decompose } from "./decompose.ts";
 export { type DecomposedComponent, Decomposition, type ItemBlock } from "./decomposition.ts";
 export { replaceBlocks } from "./replace-blocks.ts";
 export { type GadgetInfo, type GadgetState, gadgetText, Replacement } from "./replacement.ts";
+export { Classification, type ClassifiedComponent, classify } from "./classify.ts";
