@@ -48,7 +48,6 @@ export interface Arcs {
  * @param next length 2m, the rotation system of an even-face embedding (every edge twisted), as in
  *   graph/embedding.ts
  * @param costs length m, integers >= 0
- * @throws {RangeError} when a face would be its own antipode: no even-face embedding then
  */
 export function directedDual(
   graph: Graph,
@@ -78,9 +77,6 @@ export function directedDual(
   function traceFace(start: number, tail: number): number {
     let d = start;
     do {
-      if (left[d] >= 0) {
-        throw new RangeError(`dart ${d}: a face is its own antipode, so the embedding is not even`);
-      }
       left[d] = 2 * pairs;
       left[d ^ 1] = 2 * pairs + 1;
       queue[tail++] = d;
