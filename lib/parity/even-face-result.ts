@@ -42,4 +42,5 @@ export interface NoEvenFace {
   readonly kuratowski?: Kuratowski;
 }
 
+/** The embedding, or the proof that there is none. */
 export type EvenFaceResult = EvenFaceEmbedding | NoEvenFace;

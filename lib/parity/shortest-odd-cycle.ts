@@ -25,6 +25,7 @@ export interface CheapOddCycle {
   readonly cost: number;
 }
 
+/** What counts as odd, what edges cost, and where to look. */
 export interface OddCycleOptions {
   /** Length m, finite and >= 0, their sum below 2^53 if integers; default: 1 each. */
   readonly costs?: ArrayLike<number>;
