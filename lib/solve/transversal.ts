@@ -19,6 +19,8 @@ import { greedyStableSet } from "./greedy.ts";
 
 /** Largest product of cases, 2^|X|, and arcs plus vertices that the engine takes on. */
 const LARGEST_ESTIMATE = 2 ** 33;
+/** A greedy transversal so many times larger than the limit is not worth a search. */
+const HOPELESS = 4;
 /** Units of work spent on making X small: at least, and for each arc and vertex. */
 const TRANSVERSAL_WORK = 200_000_000;
 const TRANSVERSAL_WORK_PER_ARC = 400;
@@ -37,8 +39,13 @@ export function solveByTransversal(piece: Piece, meter: Meter): Solved | Decline
   const size = graph.n + 2 * graph.m;
   const limit = Math.max(0, Math.floor(Math.log2(LARGEST_ESTIMATE / Math.max(1, size))));
   const budget = Math.max(TRANSVERSAL_WORK, TRANSVERSAL_WORK_PER_ARC * size);
-  const { lower, upper, vertices } = leastTransversal(graph, meter.within(budget), { limit });
+  let found = leastTransversal(graph, meter.within(budget), { limit: 0 });
+  if (found.upper <= HOPELESS * limit) {
+    const closer = leastTransversal(graph, meter.within(budget), { limit });
+    if (closer.upper <= found.upper) found = closer;
+  }
   meter.look();
+  const { lower, upper, vertices } = found;
   if (upper > limit) {
     const known = lower === upper ? `${upper}` : `${lower} to ${upper}`;
     return {
