@@ -2,17 +2,21 @@
  * A slow recursive checker of proofs by cases, straight from the notation of certificate.ts: every
  * bound is computed anew at every leaf with big integers.
  */
-import type { CasesProof, Proof } from "../../lib/certify/certificate.ts";
+import type { CasesProof, PackingProof } from "../../lib/certify/certificate.ts";
 import type { Graph } from "../../lib/graph/graph.ts";
 
 /**
  * @param graph numbered as the proof numbers vertices
  * @param weights length n, integers
- * @param proof any proof about all vertices of the graph
+ * @param proof by cases or by a packing, about all vertices of the graph
  * @returns the bound it proves
  * @throws {Error} for the first thing that is wrong
  */
-export function boundProved(graph: Graph, weights: ArrayLike<number>, proof: Proof): number {
+export function boundProved(
+  graph: Graph,
+  weights: ArrayLike<number>,
+  proof: CasesProof | PackingProof,
+): number {
   const { n } = graph;
   const joined = Array.from({ length: n }, () => new Set<number>());
   for (let e = 0; e < graph.m; e++) {

@@ -59,7 +59,9 @@ export class CaseTree {
    * @throws {Interrupted} when the meter runs out
    */
   toProof(root: Case, denominator: number, labels: Int32Array, meter?: Meter): CasesProof {
-    // Which terms occur, and their final numbers: cliques first, then odd cycles.
+    // Which terms occur, and their final numbers: cliques first, then odd cycles. What divides all
+    // multipliers and the denominator is taken out.
+    let divisor = denominator;
     const usedCliques = new Uint8Array(this.#cliques.count);
     const usedCycles = new Uint8Array(this.#oddCycles.count);
     const stack: Case[] = [root];
@@ -69,6 +71,7 @@ export class CaseTree {
       for (let i = 0; terms !== undefined && i < terms.length; i += 2) {
         if (terms[i] % 2 === 0) usedCliques[terms[i] / 2] = 1;
         else usedCycles[(terms[i] - 1) / 2] = 1;
+        if (divisor > 1) divisor = greatestCommonDivisor(divisor, terms[i + 1]);
       }
       if (node.on !== undefined) stack.push(node.left!, node.chosen!);
     }
@@ -105,7 +108,7 @@ export class CaseTree {
         for (let i = 0; i < terms.length; i += 2) {
           if (terms[i + 1] === 0) continue;
           const t = number[terms[i]];
-          wanted[t] = terms[i + 1];
+          wanted[t] = terms[i + 1] / divisor;
           stamp[t] = round;
           after.push(t);
         }
@@ -148,8 +151,13 @@ export class CaseTree {
         path.pop();
       }
     }
-    return { rule: "cases", denominator, cliques, oddCycles, nodes };
+    return { rule: "cases", denominator: denominator / divisor, cliques, oddCycles, nodes };
   }
+}
+
+function greatestCommonDivisor(a: number, b: number): number {
+  while (b !== 0) [a, b] = [b, a % b];
+  return a;
 }
 
 /** Number of nodes and of multipliers written, for the reader of a result. */
