@@ -24,7 +24,7 @@ import { sourceCurve } from "./projective/source-curve.ts";
  * @param piece a component of a half-integral kernel, with its doubled costs
  * @param meter counts about one unit for each arc scanned
  * @returns the optimum with its proof, or why the piece is not one for this engine
- * @throws {Interrupted} when the meter runs out; there is no solution before the end
+ * @throws {Interrupted} when the meter runs out before there is any solution
  */
 export function solveProjective(piece: Piece, meter: Meter): Solved | Declined {
   const { graph, doubledCosts } = piece;
@@ -46,7 +46,8 @@ export function solveProjective(piece: Piece, meter: Meter): Solved | Declined {
  * @param piece connected, simple, not bipartite
  * @param doubledCosts length m, integers >= 0 with Mᵀc = 2w
  * @param next length 2m, the rotation system of an even-face embedding, every edge twisted
- * @returns the optimum with its proof
+ * @returns the optimum with its proof; the best found and a bound, when the meter runs out
+ * @throws {Interrupted} when the meter runs out before there is any solution
  */
 export function solveEmbedded(
   piece: Piece,
@@ -59,33 +60,37 @@ export function solveEmbedded(
   const dual = directedDual(graph, next, costs);
   const curve = sourceCurve(graph, next, dual, around, meter);
   const cycle = leastOneSidedCycle(graph, dual, curve, around, step, meter);
-  const chosen = stableSetOfCycle(graph, cycle.crossed, meter);
+  const chosen = stableSetOfCycle(graph, cycle.crossed);
 
   let total = 0, weight = 0;
   for (let v = 0; v < graph.n; v++) {
     total += weights[v];
     if (chosen[v] !== 0) weight += weights[v];
   }
-  // Every stable set weighs at most (w(V) - distance) / 2, and this one must reach it.
-  if (2 * weight !== total - unit * cycle.cost) {
-    throw new Error(
-      `internal: a one-sided cycle of cost ${unit * cycle.cost} gave a stable set of weight ` +
-        `${weight} out of ${total}`,
+  const figures = {
+    faces: dual.pairs,
+    slack: unit * cycle.cost / 2,
+    sources: curve.faces.length,
+    searches: cycle.plan.sources.length,
+  };
+  // Clamping may gain where the cycle is not a least one.
+  if (2 * weight < total - unit * cycle.cost) throw mismatch();
+  if (cycle.atLeast < cycle.cost) {
+    const upperBound = Math.floor((total - unit * cycle.atLeast) / 2);
+    if (weight > upperBound) throw mismatch();
+    return { status: "feasible", chosen, weight, upperBound, figures };
+  }
+  // Every stable set weighs at most (w(V) - cost) / 2, and this one must reach it.
+  if (2 * weight !== total - unit * cycle.cost) throw mismatch();
+  const proof: ProjectiveProof = proofOf(piece, next, unit, costs, dual, curve, cycle);
+  return { status: "optimal", chosen, weight, upperBound: weight, proof, figures };
+
+  function mismatch(): Error {
+    return new Error(
+      `internal: a one-sided cycle of cost ${unit * cycle.cost}, least at least ` +
+        `${unit * cycle.atLeast}, gave a stable set of weight ${weight} out of ${total}`,
     );
   }
-  return {
-    status: "optimal",
-    chosen,
-    weight,
-    upperBound: weight,
-    proof: proofOf(piece, next, unit, costs, dual, curve, cycle) satisfies ProjectiveProof,
-    figures: {
-      faces: dual.pairs,
-      slack: unit * cycle.cost / 2,
-      sources: curve.faces.length,
-      searches: cycle.plan.sources.length,
-    },
-  };
 }
 
 /** Costs divided by what divides them all, and what one-sided cycles are equal modulo. */
@@ -127,7 +132,7 @@ function whyNot(no: NoEvenFace): string {
     case "bipartite":
       return "it is bipartite";
     case "odd cycles in separate blocks":
-      return "it has no even-face embedding: two of its blocks have odd cycles of their own";
+      return "it has no even-face embedding: the odd cycles lie in separate blocks";
     case "cover not planar":
       return "it has no even-face embedding: its double cover is not planar";
     case "orientation kept":

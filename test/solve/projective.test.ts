@@ -153,14 +153,27 @@ describe("solveProjective", () => {
     expect(reasonFor({})).toBe("optimal");
   });
 
-  it("stops when the meter runs out", () => {
+  it("stops when the meter runs out, with what it has and a bound", () => {
     const random = new Random(37);
-    const { graph, next } = embeddedGrid(60, 60);
+    const { graph, next } = embeddedGrid(40, 40);
     const { weights, doubledCosts } = costed(graph, random, 9);
     const piece = labelled(graph, weights, doubledCosts, random);
-    for (const units of [10, 10_000, 100_000]) {
-      expect(() => solveEmbedded(piece, doubledCosts, next, new Meter().within(units)))
-        .toThrow(Interrupted);
+    const { weight } = proved(piece, solveEmbedded(piece, doubledCosts, next, new Meter()));
+    let feasible = 0;
+    for (let units = 1000; units < 200_000; units *= 1.05) {
+      const meter = new Meter().within(Math.floor(units));
+      let answer: Solved;
+      try {
+        answer = solveEmbedded(piece, doubledCosts, next, meter);
+      } catch (error) {
+        expect(error).toBeInstanceOf(Interrupted);
+        continue;
+      }
+      expect(isStable(graph, answer.chosen)).toBe(true);
+      expect(weightOf(weights, answer.chosen)).toBe(answer.weight);
+      expect(answer.weight <= weight && weight <= answer.upperBound).toBe(true);
+      if (answer.status === "feasible") feasible++;
     }
+    expect(feasible).toBeGreaterThan(3);
   });
 });

@@ -10,15 +10,17 @@
  */
 import type { Graph } from "../../graph/graph.ts";
 import { HeapQueue } from "../../graph/heap.ts";
-import type { Meter } from "../../run/meter.ts";
+import { Interrupted, type Meter } from "../../run/meter.ts";
 import type { DirectedDual } from "./directed-dual.ts";
 import { NARROW_LIMIT, Potential, TooWide } from "./potential.ts";
 import { queueFor, type SourceCurve } from "./source-curve.ts";
 
 /** The answer and how to check it. */
 export interface LeastCycle {
-  /** The cost of a least one-sided directed cycle. */
+  /** The cost of a least one-sided directed cycle; of the best found, where the run was interrupted. */
   readonly cost: number;
+  /** No one-sided cycle costs less; equal to `cost` when the run was completed. */
+  readonly atLeast: number;
   /** The edges of H it crosses, with repetitions. */
   readonly crossed: number[];
   /** The searches in preorder of their tree. */
@@ -49,6 +51,9 @@ const REACH = 0.5;
  * @param curve sources that every one-sided cycle passes
  * @param around length n, what the dual arcs around each vertex cost together
  * @param step all costs of one-sided cycles are equal modulo this
+ * @param meter counts about one unit for each arc scanned
+ * @returns the cycle; when the meter runs out, the best one found and a bound
+ * @throws {Interrupted} when the meter runs out before any cycle was found
  */
 export function leastOneSidedCycle(
   graph: Graph,
@@ -84,9 +89,16 @@ function runSearches(
   const { faces, positions } = curve;
   const plan: SearchPlan = { sources: [], depths: [], limits: [] };
   const proven = new Uint8Array(faces.length);
+  /** For each source the best bound so far. */
+  const bounds = new Float64Array(faces.length);
   let cost = Infinity, crossed: number[] = [];
-  prove(0, faces.length);
-  return { cost, crossed, plan };
+  try {
+    prove(0, faces.length);
+  } catch (error) {
+    if (!(error instanceof Interrupted) || cost === Infinity) throw error;
+    return { cost, atLeast: bounds.reduce((a, b) => Math.min(a, b), cost), crossed, plan };
+  }
+  return { cost, atLeast: cost, crossed, plan };
 
   /** Proves the sources from low to high - 1. The depth of the recursion is logarithmic. */
   function prove(low: number, high: number): void {
@@ -121,7 +133,8 @@ function runSearches(
   function noteProven(): void {
     let done = 0;
     for (let i = 0; i < faces.length; i++) {
-      if (proven[i] === 0 && potential.bound(faces[i]) > cost - step) proven[i] = 1;
+      bounds[i] = Math.max(bounds[i], potential.bound(faces[i]));
+      if (bounds[i] > cost - step) proven[i] = 1;
       done += proven[i];
     }
     meter.report("shortest one-sided cycle", { done, total: faces.length });

@@ -1,6 +1,5 @@
 /** From a one-sided cycle of the dual back to a stable set: the vertices that leave its edges slack. */
 import type { Graph } from "../../graph/graph.ts";
-import type { Meter } from "../../run/meter.ts";
 
 /**
  * The stable set whose edge slacks are given, or one at least as heavy. Solves x(u) + x(v) = 1 - y(e)
@@ -16,7 +15,6 @@ import type { Meter } from "../../run/meter.ts";
 export function stableSetOfCycle(
   graph: Graph,
   crossed: readonly number[],
-  meter: Meter,
 ): Uint8Array {
   const { n, m, offsets, targets, edgeOf } = graph;
   const slack = new Int32Array(m);
@@ -37,7 +35,6 @@ export function stableSetOfCycle(
         t = (rest - constant[u]) / (2 * sign[u]);
       }
     }
-    meter.tick(1 + offsets[v + 1] - offsets[v]);
   }
   const chosen = new Uint8Array(n);
   for (let v = 0; v < n; v++) {
