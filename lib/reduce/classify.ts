@@ -10,9 +10,9 @@ import { type Graph, graphFromEdges } from "../graph/graph.ts";
 import type { Instance } from "../instance/instance.ts";
 import { classifyGraph, type GraphClass, type GraphKind } from "../parity/classify-graph.ts";
 import type { EvenFaceEmbedding } from "../parity/even-face-result.ts";
-import { canWorkAside, type Job, runAside } from "../run/aside.ts";
+import { hereOrAside, type Job } from "../run/aside.ts";
 import { Displayable } from "../run/displayable.ts";
-import { Meter } from "../run/meter.ts";
+import type { Meter } from "../run/meter.ts";
 import { checkRunOptions, type RunOptions } from "../run/options.ts";
 
 /** A number that is known to lie between two others, both included. */
@@ -157,11 +157,6 @@ export class Classification extends Displayable implements ClassificationData {
   }
 }
 
-/** Work that is tried in the caller's thread before a worker is started. */
-const WORK_HERE = 5e7;
-/** Vertices and edges above which a worker is used at once. */
-const SIZE_HERE = 200_000;
-
 /**
  * Classifies an instance.
  *
@@ -179,9 +174,16 @@ export async function classify(
   options: RunOptions = {},
 ): Promise<Classification> {
   checkRunOptions(options);
-  const meter = new Meter(options);
+  const began = performance.now();
   const { graph, ids } = instance;
-  const classes = await run(graph, meter, options);
+  const { n, m, tails, heads } = graph;
+  const classes = await hereOrAside(
+    "classify",
+    n + m,
+    options,
+    (meter) => classifyAll(graph, meter),
+    (): Posted => ({ n, tails, heads }),
+  );
   const { of } = components(graph);
   const members: number[][] = classes.map(() => []);
   for (let v = 0; v < graph.n; v++) members[of[v]].push(v);
@@ -217,24 +219,8 @@ export async function classify(
       fingerprint: instance.fingerprint,
     },
     components: list,
-    elapsedMs: meter.elapsedMs,
+    elapsedMs: performance.now() - began,
   }, embeddings);
-}
-
-async function run(graph: Graph, meter: Meter, options: RunOptions): Promise<GraphClass[]> {
-  if (options.workers === 0 || !canWorkAside()) return await classifyAll(graph, meter);
-  if (graph.n + graph.m <= SIZE_HERE) {
-    const here = meter.within(WORK_HERE);
-    const classes = await classifyAll(graph, here);
-    if (here.remainingWork > 0 || meter.interruption !== undefined) return classes;
-  }
-  const { n, tails, heads } = graph;
-  return await runAside(
-    new URL("../worker.ts", import.meta.url),
-    "classify",
-    { n, tails, heads } satisfies Posted,
-    { ...options, timeLimitMs: options.timeLimitMs && meter.remainingMs },
-  ) as GraphClass[];
 }
 
 /** What is posted to the worker for the job "classify". */

@@ -153,3 +153,40 @@ export async function serve(
     send({ failure: problems === undefined ? { name, message } : { name, message, problems } });
   }
 }
+
+/** Work that is tried in the caller's thread before a worker is started: about 0.2 s. */
+const WORK_HERE = 5e7;
+/** Vertices and edges above which a worker is used at once. */
+const SIZE_HERE = 200_000;
+
+/**
+ * Runs a job in the caller's thread while it is quick, else from the start in a worker, where a stop
+ * reaches even a synchronous stretch. Which of the two depends on the work and not on the clock.
+ *
+ * @param job the name under which the worker knows the job
+ * @param size vertices and edges
+ * @param options limits of the run; `workers: 0` keeps it here
+ * @param here the job for this thread; when its meter runs out it returns what it has
+ * @param input makes what the worker needs, as plain data
+ * @returns the job's result
+ */
+export async function hereOrAside<T>(
+  job: string,
+  size: number,
+  options: RunOptions,
+  here: (meter: Meter) => Promise<T>,
+  input: () => unknown,
+): Promise<T> {
+  const meter = new Meter(options);
+  if (options.workers === 0 || !canWorkAside()) return await here(meter);
+  if (size <= SIZE_HERE) {
+    const budget = meter.within(WORK_HERE);
+    const result = await here(budget);
+    if (budget.remainingWork > 0 || meter.interruption !== undefined) return result;
+  }
+  const { timeLimitMs } = options;
+  return await runAside(new URL("../worker.ts", import.meta.url), job, input(), {
+    ...options,
+    ...(timeLimitMs !== undefined && { timeLimitMs: meter.remainingMs }),
+  }) as T;
+}

@@ -6,9 +6,8 @@ import type { Certificate } from "../certify/certificate.ts";
 import { Solution, type SolutionPart } from "../certify/solution.ts";
 import { graphFromEdges, inducedSubgraph } from "../graph/graph.ts";
 import type { Instance } from "../instance/instance.ts";
-import { canWorkAside, type Job, runAside } from "../run/aside.ts";
+import { hereOrAside, type Job } from "../run/aside.ts";
 import { InstanceError } from "../run/errors.ts";
-import { Meter } from "../run/meter.ts";
 import { checkRunOptions, type Progress, type RunOptions } from "../run/options.ts";
 import { certificateParts, dispatch, type Outcome, type Problem } from "./dispatch.ts";
 import type { EngineName } from "./engine.ts";
@@ -22,11 +21,6 @@ export interface SolveOptions extends RunOptions {
   /** Use this engine alone on every component of the kernel. */
   engine?: EngineName;
 }
-
-/** Work that is tried in the caller's thread before a worker is started: about 0.2 s. */
-const WORK_HERE = 5e7;
-/** Vertices and edges above which a worker is used at once. */
-const SIZE_HERE = 200_000;
 
 /**
  * Finds the conflict-free choice of greatest worth and proves that nothing better exists.
@@ -48,7 +42,17 @@ export async function solve(instance: Instance, options: SolveOptions = {}): Pro
   if (typeof question === "string") {
     return answer(instance, options, question, performance.now() - began);
   }
-  const outcome = await run(question.problem, toUnits(options, instance.scale, question.given));
+  const { problem, given } = question;
+  const { graph, weights, labels, engine } = problem;
+  const outcome = await hereOrAside(
+    "solve",
+    graph.n + graph.m,
+    toUnits(options, instance.scale, given),
+    (meter) => dispatch(problem, meter),
+    (): Posted => (
+      { n: graph.n, tails: graph.tails, heads: graph.heads, weights, labels, engine }
+    ),
+  );
   return answer(instance, options, { question, outcome }, performance.now() - began);
 }
 
@@ -134,25 +138,6 @@ function toUnits(options: RunOptions, scale: number, given: number): RunOptions 
         ...(progress.upper !== undefined && { upper: (progress.upper + given) / scale }),
       })),
   };
-}
-
-/** Here while it is quick, else in a worker, where a stop reaches even a synchronous stretch. */
-async function run(problem: Problem, options: RunOptions): Promise<Outcome> {
-  const meter = new Meter(options);
-  if (options.workers === 0 || !canWorkAside()) return await dispatch(problem, meter);
-  if (problem.graph.n + problem.graph.m <= SIZE_HERE) {
-    const here = meter.within(WORK_HERE);
-    const outcome = await dispatch(problem, here);
-    if (here.remainingWork > 0 || meter.interruption !== undefined) return outcome;
-  }
-  const { n, tails, heads } = problem.graph;
-  const { weights, labels, engine } = problem;
-  return await runAside(
-    new URL("../worker.ts", import.meta.url),
-    "solve",
-    { n, tails, heads, weights, labels, engine } satisfies Posted,
-    { ...options, timeLimitMs: options.timeLimitMs && meter.remainingMs },
-  ) as Outcome;
 }
 
 /** What is posted to the worker for the job "solve". */
