@@ -15,3 +15,11 @@ export function effortMs(call: () => void, runs = 1): number {
   }
   return least;
 }
+
+/** Milliseconds an asynchronous call takes: the lesser of wall-clock and processor time. */
+export async function asyncEffortMs(call: () => Promise<unknown>): Promise<number> {
+  const begun = performance.now(), before = process.cpuUsage();
+  await call();
+  const { user, system } = process.cpuUsage(before);
+  return Math.min(performance.now() - begun, (user + system) / 1000);
+}
