@@ -1,9 +1,13 @@
 import { describe, expect, it } from "vitest";
-import type { Graph } from "../../lib/graph/graph.ts";
+import { check } from "../../lib/certify/check.ts";
+import { toJson } from "../../lib/certify/json.ts";
+import { type Graph, graphFromPairs } from "../../lib/graph/graph.ts";
+import { Instance } from "../../lib/instance/instance.ts";
 import { Interrupted, Meter } from "../../lib/run/meter.ts";
 import { Random } from "../../lib/run/random.ts";
 import type { Piece, Solved } from "../../lib/solve/engine.ts";
 import { solveEmbedded, solveProjective } from "../../lib/solve/projective.ts";
+import { solve } from "../../lib/solve/solve.ts";
 import { bruteForce, isStable, weightOf } from "../oracle/brute-force.ts";
 import {
   type EmbeddedGraph,
@@ -151,6 +155,30 @@ describe("solveProjective", () => {
       "it is not a component of a half-integral kernel",
     );
     expect(reasonFor({})).toBe("optimal");
+    // Other graphs, with cost 1 on each edge.
+    const onGraph = (n: number, pairs: [number, number][]) => {
+      const graph = graphFromPairs(n, pairs);
+      const degrees = Float64Array.from(
+        { length: n },
+        (_, v) => graph.offsets[v + 1] - graph.offsets[v],
+      );
+      const costs = new Float64Array(graph.m).fill(2);
+      return reasonFor(labelled(graph, degrees, costs, random));
+    };
+    const triangles: [number, number][] = [[0, 1], [1, 2], [2, 0], [3, 4], [4, 5], [5, 3]];
+    expect(onGraph(3, [[0, 1], [1, 2], [2, 0], [0, 1]])).toBe("it has parallel edges");
+    expect(onGraph(4, [[0, 1], [1, 2], [2, 3], [3, 0]])).toBe("it is bipartite");
+    expect(onGraph(6, triangles)).toBe("it is not connected");
+    expect(onGraph(6, [...triangles, [0, 3]])).toBe(
+      "it has no even-face embedding: the odd cycles lie in separate blocks",
+    );
+    expect(onGraph(6, [...triangles, [0, 3], [1, 4], [2, 5]])).toBe(
+      "it has no even-face embedding: swapping the sheets of its cover keeps orientation",
+    );
+    const k5 = Array.from({ length: 25 }, (_, i): [number, number] => [Math.floor(i / 5), i % 5]);
+    expect(onGraph(5, k5.filter(([u, v]) => u < v))).toBe(
+      "it has no even-face embedding: its double cover is not planar",
+    );
   });
 
   it("stops when the meter runs out, with what it has and a bound", () => {
@@ -175,5 +203,31 @@ describe("solveProjective", () => {
       if (answer.status === "feasible") feasible++;
     }
     expect(feasible).toBeGreaterThan(3);
+  });
+});
+
+describe("the whole path", () => {
+  it("goes from names and weights over kernel and engine to a certificate in JSON that checks", async () => {
+    const random = new Random(52);
+    const { graph } = irregular(embeddedGrid(9, 9), random, 20);
+    const costs = Float64Array.from({ length: graph.m }, () => 1 + random.below(9));
+    const weights = new Float64Array(graph.n);
+    for (let e = 0; e < graph.m; e++) {
+      weights[graph.tails[e]] += costs[e];
+      weights[graph.heads[e]] += costs[e];
+    }
+    const instance = Instance.from({
+      items: Array.from(weights, (weight, v) => ({ id: `i${(v * 7919) % 100_003}`, weight })),
+      conflicts: Array.from(
+        graph.tails,
+        (u, e) => [`i${(u * 7919) % 100_003}`, `i${(graph.heads[e] * 7919) % 100_003}`] as const,
+      ),
+    });
+    const solution = await solve(instance, { engine: "projective", workers: 0 });
+    expect(solution.status).toBe("optimal");
+    expect(solution.parts.map((part) => part.engine)).toContain("projective");
+    expect(check(instance, toJson(solution))).toEqual(
+      expect.objectContaining({ valid: true }),
+    );
   });
 });
