@@ -21,6 +21,8 @@ import { greedyStableSet } from "./greedy.ts";
 const LARGEST_ESTIMATE = 2 ** 33;
 /** A greedy transversal so many times larger than the limit is not worth a search. */
 const HOPELESS = 4;
+/** Units of work spent on making X smaller where it is small enough already. */
+const POLISHING_WORK = 50_000_000;
 /** Units of work spent on making X small: at least, and for each arc and vertex. */
 const TRANSVERSAL_WORK = 200_000_000;
 const TRANSVERSAL_WORK_PER_ARC = 400;
@@ -41,7 +43,8 @@ export function solveByTransversal(piece: Piece, meter: Meter): Solved | Decline
   const budget = Math.max(TRANSVERSAL_WORK, TRANSVERSAL_WORK_PER_ARC * size);
   let found = leastTransversal(graph, meter.within(budget), { limit: 0 });
   if (found.upper <= HOPELESS * limit) {
-    const closer = leastTransversal(graph, meter.within(budget), { limit });
+    const purse = found.upper <= limit ? POLISHING_WORK : budget;
+    const closer = leastTransversal(graph, meter.within(purse), { limit });
     if (closer.upper <= found.upper) found = closer;
   }
   meter.look();
