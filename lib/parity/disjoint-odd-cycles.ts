@@ -16,7 +16,7 @@
  * Near-linear in practice.
  */
 import { componentSubgraphs } from "../graph/components.ts";
-import { type Graph, graphFromEdges, inducedSubgraph } from "../graph/graph.ts";
+import { type Graph, graphFromEdges } from "../graph/graph.ts";
 import { separations } from "../graph/separations.ts";
 import type { Meter } from "../run/meter.ts";
 import { balance } from "./balance.ts";
@@ -24,6 +24,7 @@ import { evenFaceEmbedding } from "./even-face.ts";
 import type { EvenFaceEmbedding } from "./even-face-result.ts";
 import { linked } from "./linkage.ts";
 import { allOdd, type OddKernel, oddKernel } from "./odd-kernel.ts";
+import { withoutSides } from "./replace-sides.ts";
 import { transversalWithin } from "./transversal.ts";
 
 /** The answer and what settled it. */
@@ -152,63 +153,20 @@ function beyondThree(start: Graph, startEven: Uint8Array, meter: Meter): TwoDisj
         : "it has an even-face embedding in the projective plane";
       return { exist: false, because, embedded: { graph, embedding } };
     }
-    const { sides, small, twisted, complete } = separations(graph, meter);
-    if (twisted > 0) return { exist: true, because: "three items leave two parts with odd cycles" };
-    if (sides.length === 0) {
-      if (complete) break;
-      return { exist: undefined, because: `the search for sides ended early (${small.length})` };
+    const found = separations(graph, meter);
+    if (found.twisted > 0) {
+      return { exist: true, because: "three items leave two parts with odd cycles" };
     }
-    const next = withoutSides(graph, sides, meter);
-    if (next === undefined) return { exist: true, because: "odd cycles lie in separate parts" };
+    const next = withoutSides(graph, found, meter);
+    if (next === "apart") return { exist: true, because: "odd cycles lie in separate parts" };
+    if (next === "none") {
+      if (found.complete) break;
+      return { exist: undefined, because: "the search for sides ended before all were found" };
+    }
     graph = next;
   }
   return {
     exist: true,
     because: "four items or more meet all odd cycles, and there is no even-face embedding",
   };
-}
-
-/**
- * Replaces sides with two attachments by an edge and those with three by a star. A transversal with
- * one vertex inside a side may take the star's middle instead, one with more two attachments; so the
- * transversals do not become larger.
- *
- * @returns the odd kernel of what is left; undefined where odd cycles fall into separate parts
- */
-function withoutSides(
-  graph: Graph,
-  sides: ReturnType<typeof separations>["sides"],
-  meter: Meter,
-): Graph | undefined {
-  const keep = new Uint8Array(graph.n).fill(1), alone = new Uint8Array(graph.n);
-  const tails: number[] = [], heads: number[] = [], even: number[] = [];
-  for (const { inside, attachments, attachmentSide } of sides) {
-    for (const v of inside) keep[v] = 0;
-    // The first inner vertex stays as the middle of the star, on the side of the first attachment.
-    if (attachments.length === 3) keep[inside[0]] = 1;
-    const middle = attachments.length === 3 ? inside[0] : attachments[0];
-    for (let i = attachments.length === 3 ? 0 : 1; i < attachments.length; i++) {
-      tails.push(middle);
-      heads.push(attachments[i]);
-      even.push(attachmentSide[i] === attachmentSide[0] ? 1 : 0);
-    }
-  }
-  for (const { inside, attachments } of sides) if (attachments.length === 3) alone[inside[0]] = 1;
-  const rest = inducedSubgraph(graph, keep);
-  const index = new Int32Array(graph.n).fill(-1);
-  rest.vertices.forEach((v, i) => index[v] = i);
-  const own = rest.edges.filter((e) => alone[graph.tails[e]] === 0 && alone[graph.heads[e]] === 0);
-  const joined = graphFromEdges(
-    rest.graph.n,
-    Int32Array.from([...own.map((e) => index[graph.tails[e]]), ...tails.map((v) => index[v])]),
-    Int32Array.from([...own.map((e) => index[graph.heads[e]]), ...heads.map((v) => index[v])]),
-  );
-  const parity = Uint8Array.from([...new Uint8Array(own.length), ...even]);
-  const kernel = oddKernel(joined, meter, undefined, parity);
-  const parts = componentSubgraphs(kernel.graph).filter(({ graph, edges }) =>
-    balance(graph, evenOf(kernel, edges)).side === undefined
-  );
-  // Four vertices or more were needed, so beside a forced one there is another odd cycle.
-  if (kernel.forced.length > 0 || parts.length !== 1) return undefined;
-  return allOdd(parts[0].graph, evenOf(kernel, parts[0].edges));
 }

@@ -149,6 +149,30 @@ describe("oddCyclePacking", () => {
     expectPacking(graphFromPairs(6, [...square, ...chain(0, 1, [4]), ...chain(1, 2, [5])]), 1);
   });
 
+  it("replaces sides that are not planar, whatever they hang on", () => {
+    // A mirrored grid and K(3,3) behind one, two or three of its vertices: corners of a square.
+    const grid = mirroredGrid(6, 6);
+    for (const attachments of [[7], [7, 8], [7, 14], [7, 8, 13], [8, 13, 14]]) {
+      const pairs = Array.from(grid.tails, (u, e): [number, number] => [u, grid.heads[e]]);
+      for (let copies = 1, n = grid.n; copies <= 2; copies++, n += 6) {
+        for (let p = 0; p < 3; p++) for (let q = 3; q < 6; q++) pairs.push([n + p, n + q]);
+        for (const [i, v] of attachments.entries()) {
+          // The side of v in the square decides which class of the block it is tied to.
+          pairs.push([v, n + (v === 7 || v === 14 ? 0 : 3) + (i % 3)]);
+        }
+        const graph = graphFromPairs(n + 6, [...pairs]);
+        const answer = twoDisjointOddCycles(graph, new Meter());
+        expect([attachments, copies, answer.exist]).toEqual([attachments, copies, false]);
+      }
+      // Once tied to the wrong class as well, the block holds an odd cycle beside the grid's.
+      const wrong = graphFromPairs(grid.n + 12, [...pairs, [attachments[0], grid.n + 5], [
+        attachments[0],
+        grid.n + 2,
+      ]]);
+      expect(twoDisjointOddCycles(wrong, new Meter()).exist).toBe(true);
+    }
+  });
+
   it("says what is open when the run ends early", () => {
     const graph = mirroredGrid(30, 30);
     for (let units = 1; units < 10_000_000; units *= 4) {

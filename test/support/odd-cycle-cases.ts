@@ -10,7 +10,7 @@ const SHAPES = [[3, 3], [5, 3], [3, 5], [4, 4], [2, 6], [6, 2], [5, 5], [4, 6], 
  * A mirrored grid with a few random changes: edges removed, an edge or an even or odd chain added,
  * two vertices made one, bipartite blocks hung on.
  *
- * @returns a simple graph of at most 28 vertices, not always connected
+ * @returns a simple graph of at most 29 vertices, not always connected
  */
 export function changedGrid(random: Random): Graph {
   const [rows, columns] = SHAPES[random.below(SHAPES.length)];
@@ -37,10 +37,10 @@ export function changedGrid(random: Random): Graph {
     return true;
   });
   const graph = graphFromPairs(n, pairs);
-  if (n > 20 || random.below(2) === 0) return graph;
+  if (n > 26 || random.below(2) === 0) return graph;
   return withBlocks(random, graph, {
-    blocks: 1 + random.below(2),
-    size: 4,
+    blocks: n > 20 ? 1 : 1 + random.below(3),
+    size: 3,
     attachments: random.below(2) === 0 ? 3 : "any",
     nested: random.below(2) === 0,
     density: 0.5,
