@@ -13,20 +13,19 @@ import { exactSum } from "../run/exact.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
 import type { Declined, Piece, Solved } from "./engine.ts";
 
-/** Odd cycles up to this length are written out in the reason. */
-const SHOWN = 25;
-
 /**
  * Solves a bipartite piece to optimality.
  *
  * @param piece may also be disconnected
  * @param meter on interruption the answer is feasible, with the bound that the flow so far proves
- * @returns optimal with a packing as proof; feasible; or declined with an odd cycle
+ * @returns optimal with a packing as proof; feasible; or declined with the length of an odd cycle
  */
 export function solveBipartite(piece: Piece, meter: Meter): Solved | Declined {
-  const { graph, weights, labels } = piece;
+  const { graph, weights } = piece;
   const { side, oddCycle } = twoColouring(graph);
-  if (side === undefined) return { status: "declined", reason: describe(oddCycle!, labels) };
+  if (side === undefined) {
+    return { status: "declined", reason: `it has an odd cycle of ${oddCycle!.length} items` };
+  }
   const total = exactSum(weights);
   let relaxation: Relaxation | undefined;
   try {
@@ -65,12 +64,6 @@ export function solveBipartite(piece: Piece, meter: Meter): Solved | Declined {
       figures: { interrupted: stop.reason },
     };
   }
-}
-
-function describe(oddCycle: Int32Array, labels: Int32Array): string {
-  const shown = Array.from(oddCycle.subarray(0, SHOWN), (v) => labels[v]).join(", ");
-  const more = oddCycle.length > SHOWN ? ", …" : "";
-  return `it is not bipartite: ${shown}${more} form an odd cycle of length ${oddCycle.length}`;
 }
 
 /** The edges that carry a multiplier, by the labels of their ends. */
