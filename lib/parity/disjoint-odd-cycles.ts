@@ -78,9 +78,10 @@ function inKernel(graph: Graph, even: Uint8Array, meter: Meter): TwoDisjoint {
   if (cycles.length >= 2) return { exist: true, because: "two were found" };
   if (best.length === 1) return { exist: false, because: "one item meets all odd cycles" };
   if (lower > 3) return beyondThree(graph, even, meter);
+  const exist = throughTransversal(graph, even, best, meter);
   const because = `${best.length} items meet all odd cycles, and ` +
-    "disjoint paths between the colour classes of the rest decide";
-  return { exist: throughTransversal(graph, even, best, meter), because };
+    `${exist ? "" : "no "}two disjoint paths join the colour classes of the rest in the right way`;
+  return { exist, because };
 }
 
 /** The question for a transversal of two or three vertices. */
