@@ -70,6 +70,12 @@ export class Classification extends Displayable implements ClassificationData {
   readonly elapsedMs: number;
   readonly #embeddings: ReadonlyMap<number, ComponentEmbedding>;
 
+  /**
+   * Takes the sums over the components.
+   *
+   * @param data the plain data
+   * @param embeddings by index of the component
+   */
   constructor(
     data: ClassificationData,
     embeddings: ReadonlyMap<number, ComponentEmbedding> = new Map(),

@@ -19,4 +19,13 @@ export { decompose } from "./decompose.ts";
 export { type DecomposedComponent, Decomposition, type ItemBlock } from "./decomposition.ts";
 export { replaceBlocks } from "./replace-blocks.ts";
 export { type GadgetInfo, type GadgetState, gadgetText, Replacement } from "./replacement.ts";
-export { Classification, type ClassifiedComponent, classify } from "./classify.ts";
+export {
+  Classification,
+  type ClassificationData,
+  type ClassifiedComponent,
+  classify,
+  type ComponentEmbedding,
+  type Interval,
+} from "./classify.ts";
+export type { GraphKind } from "../parity/classify-graph.ts";
+export type { EvenFaceEmbedding } from "../parity/even-face-result.ts";
