@@ -60,7 +60,9 @@ export class Browser {
       socket.onopen = resolve;
       socket.onerror = reject;
     });
-    return new Browser(process, folder, socket);
+    const browser = new Browser(process, folder, socket);
+    await browser.send("Emulation.setFocusEmulationEnabled", { enabled: true });
+    return browser;
   }
 
   /** Sends one command of the protocol. */

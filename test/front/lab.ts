@@ -37,6 +37,7 @@ export class Lab {
         `--IdentityProvider.token=${TOKEN}`,
         `--ServerApp.root_dir=${ROOT}notebooks`,
         "--LabApp.extension_manager=readonly",
+        "--LabApp.expose_app_in_browser=True",
       ],
       env: JUPYTER_ENV,
       stdout: "null",
@@ -64,6 +65,14 @@ export class Lab {
     const url = `http://127.0.0.1:${this.#port}/doc/tree/${notebook}?token=${TOKEN}&reset`;
     await browser.open(url, 1200, 1000);
     await browser.wait("document.querySelectorAll('.jp-CodeCell').length > 0");
+    await browser.wait("[...window.jupyterapp.shell.widgets('main')][0]?.context !== undefined");
+    await browser.ask(`(async () => {
+      await window.jupyterapp.restored;
+      const [panel] = window.jupyterapp.shell.widgets("main");
+      await panel.context.ready;
+      await panel.sessionContext.ready;
+      await panel.sessionContext.session.kernel.info;
+    })()`);
     await browser.wait(IDLE);
   }
 
@@ -85,17 +94,9 @@ export class Lab {
 const IDLE = `document.querySelector(
   '.jp-Notebook-ExecutionIndicator')?.getAttribute("data-status") === "idle"`;
 
-/** Chooses a command of JupyterLab by its name in a menu, such as "Run" and "Run All Cells". */
-export async function choose(browser: Browser, menu: string, entry: string): Promise<void> {
-  const find = (selector: string, text: string) =>
-    `[...document.querySelectorAll('${selector}')]
-    .find((one) => one.textContent.trim().startsWith(${JSON.stringify(text)}))`;
-  await browser.wait(`${find(".lm-MenuBar-itemLabel", menu)} !== undefined`);
-  await browser.ask(`${find(".lm-MenuBar-itemLabel", menu)}.setAttribute("data-front", "menu")`);
-  await browser.click('[data-front="menu"]');
-  await browser.wait(`${find(".lm-Menu-item", entry)} !== undefined`);
-  await browser.ask(`${find(".lm-Menu-item", entry)}.setAttribute("data-front", "entry")`);
-  await browser.click('[data-front="entry"]');
+/** Carries out a command of JupyterLab, such as `notebook:run-all-cells`. */
+export async function command(browser: Browser, name: string): Promise<void> {
+  await browser.ask(`void window.jupyterapp.commands.execute(${JSON.stringify(name)})`);
 }
 
 /** Waits until every code cell has run: each has a number and none is waiting. */

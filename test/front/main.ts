@@ -13,13 +13,17 @@
 import { parseArgs } from "node:util";
 import { readdirSync } from "node:fs";
 import { Browser } from "./browser.ts";
-import { allDone, choose, Lab, outputsOf, toHtml } from "./lab.ts";
+import { allDone, command, Lab, outputsOf, toHtml } from "./lab.ts";
 import { run } from "./run.ts";
 import { longSolve } from "./long-solve.ts";
 import { JUPYTER_ENV, OUT, prepare, ROOT, VENV } from "./venv.ts";
 
-/** Seconds a cell may go on after Stop was pressed. */
+/** A notebook that is made for one test and taken away again. */
+const SCRATCH = "stop-in-lab.ipynb";
+/** Seconds a cell may go on after the signal of the Stop button. */
 const STOP_WITHIN = 1;
+/** The same from the click of the mouse, with what the front end itself takes on a busy machine. */
+const STOP_SHOWN_WITHIN = 2;
 
 let passed = 0, failed = 0;
 
@@ -76,11 +80,11 @@ async function stop(): Promise<string> {
 async function inLab(lab: Lab, browser: Browser, notebook: string): Promise<string> {
   const committed = JSON.parse(Deno.readTextFileSync(`${ROOT}notebooks/${notebook}`));
   await lab.open(browser, notebook);
-  await choose(browser, "Edit", "Clear Outputs of All Cells");
+  await command(browser, "notebook:clear-all-cell-outputs");
   await browser.wait("document.querySelectorAll('.jp-OutputArea-output').length === 0");
   // High enough that every cell is laid out: JupyterLab leaves out what is far below the window.
   await browser.resize(1200, 12_000);
-  await choose(browser, "Run", "Run All Cells");
+  await command(browser, "notebook:run-all-cells");
   await allDone(browser);
   const cells = await outputsOf(browser);
   const codes = committed.cells.filter((cell: { cell_type: string }) => cell.cell_type === "code");
@@ -107,8 +111,7 @@ async function inLab(lab: Lab, browser: Browser, notebook: string): Promise<stri
 }
 
 async function stopInLab(lab: Lab, browser: Browser): Promise<string> {
-  const name = "stop-in-lab.ipynb";
-  const path = `${ROOT}notebooks/${name}`;
+  const path = `${ROOT}notebooks/${SCRATCH}`;
   const [setUp, long, found, state] = longSolve("../lib/mod.ts");
   const cell = (source: string) => ({
     cell_type: "code",
@@ -128,8 +131,8 @@ async function stopInLab(lab: Lab, browser: Browser): Promise<string> {
     }),
   );
   try {
-    await lab.open(browser, name);
-    await choose(browser, "Run", "Run All Cells");
+    await lab.open(browser, SCRATCH);
+    await command(browser, "notebook:run-all-cells");
     // The second cell is running when its line of progress is there.
     await browser.wait(`document.body.textContent.includes("solve: ")`, 60_000);
     const line = String(
@@ -144,7 +147,7 @@ async function stopInLab(lab: Lab, browser: Browser): Promise<string> {
     await browser.wait(`document.body.textContent.includes("solve: stopped")`, 20_000);
     const took = (performance.now() - began) / 1000;
     await browser.wait(`document.body.textContent.includes("kept 42")`, 20_000);
-    expect(took < STOP_WITHIN, `took ${took} s`);
+    expect(took < STOP_SHOWN_WITHIN, `took ${took} s`);
     await browser.photograph(`${OUT}/stopped.png`);
     return `progress said "${line.trim()}"; stopped ${took.toFixed(2)} s after the click`;
   } finally {
@@ -176,27 +179,35 @@ if (!Number.isInteger(runs) || runs < 1) {
 }
 const wanted = (name: string) => values.only === undefined || values.only === name;
 await prepare();
-const notebooks = readdirSync(`${ROOT}notebooks`).filter((name) => name.endsWith(".ipynb")).sort();
+const notebooks = readdirSync(`${ROOT}notebooks`)
+  .filter((name) => name.endsWith(".ipynb") && name !== SCRATCH).sort();
 expect(notebooks.length > 0, "there is no notebook");
 if (wanted("headless")) {
   for (const name of notebooks) await check(`${name} headless`, () => headless(name, runs));
 }
 if (wanted("stop")) await check("Stop in a real kernel", stop);
-if (wanted("lab")) {
+/** A browser of its own for each check: a page that was worked on asks before it is left. */
+async function browsing(body: (browser: Browser) => Promise<string>): Promise<string> {
   const browser = await Browser.start();
   try {
-    const lab = await Lab.start();
-    try {
-      for (const name of notebooks) {
-        await check(`${name} in JupyterLab`, () => inLab(lab, browser, name));
-      }
-      await check("Stop in JupyterLab", () => stopInLab(lab, browser));
-    } finally {
-      await lab.stop();
-    }
-    for (const name of notebooks) await check(`${name} as a page`, () => printed(browser, name));
+    return await body(browser);
   } finally {
     await browser.close();
+  }
+}
+
+if (wanted("lab")) {
+  const lab = await Lab.start();
+  try {
+    for (const name of notebooks) {
+      await check(`${name} in JupyterLab`, () => browsing((b) => inLab(lab, b, name)));
+    }
+    await check("Stop in JupyterLab", () => browsing((b) => stopInLab(lab, b)));
+  } finally {
+    await lab.stop();
+  }
+  for (const name of notebooks) {
+    await check(`${name} as a page`, () => browsing((b) => printed(b, name)));
   }
 }
 console.log(`\n${passed} passed, ${failed} failed`);

@@ -46,6 +46,8 @@ export async function prepare(): Promise<void> {
     JSON.stringify({
       "@jupyterlab/apputils-extension:notification": { fetchNews: "false", checkForUpdates: false },
       "@jupyterlab/docmanager-extension:plugin": { autosave: false },
+      // All cells stand in the page, however far below the window they are.
+      "@jupyterlab/notebook-extension:tracker": { windowingMode: "none" },
     }),
   );
   for (const name of ["data", "config", "runtime", "workspaces"]) {
