@@ -23,11 +23,15 @@ const MOST_RELAXATION_SIZE = 50_000;
 const FIRST_LOOK = 2 ** 28;
 const ONLY_LOOK = 2 ** 31;
 /**
- * Budgets of the first turns, in units of work (about 2^18 a millisecond): a short look by covers,
- * which is all that small pieces need, then both in earnest. Later turns grow fourfold and eightfold.
+ * Budgets of the turns, in units of work (about 2^18 a millisecond): a short look by covers, which is
+ * all that small pieces need, then both in earnest, relaxations with more where the piece is sparse.
+ * Later turns grow fourfold.
  */
-const FIRST_COVER_TURNS = [2 ** 24, 2 ** 30];
-const FIRST_RELAXATION_TURN = 2 ** 28;
+const FIRST_COVER_TURN = 2 ** 24;
+const DENSE_TURNS = { cover: 2 ** 30, relaxation: 2 ** 28 };
+const SPARSE_TURNS = { cover: 2 ** 28, relaxation: 2 ** 30 };
+/** Edges to a vertex up to which a piece counts as sparse. */
+const SPARSE = 5;
 /** A proof with more numbers than this is not kept: the search it comes from is given up. */
 const MOST_NUMBERS = 2 ** 24;
 
@@ -86,8 +90,8 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
     };
   }
 
-  let [coverTurn, nextCoverTurn] = relaxations ? FIRST_COVER_TURNS : [Infinity, Infinity];
-  let relaxationTurn = covers ? FIRST_RELAXATION_TURN : Infinity;
+  const turns = m <= SPARSE * n ? SPARSE_TURNS : DENSE_TURNS;
+  let coverTurn = FIRST_COVER_TURN, nextCoverTurn = turns.cover, relaxationTurn = turns.relaxation;
   let coverOutgrown = !covers, relaxationOutgrown = !relaxations;
   let cliques: number[][] | undefined;
   for (let round = 0; !(coverOutgrown && relaxationOutgrown); round++) {
@@ -126,7 +130,7 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
       if (result.root !== undefined) return solved("linear relaxations", result, tree);
       if (meter.interruption !== undefined) return solved("linear relaxations");
       relaxationOutgrown = result.outgrown === true;
-      relaxationTurn *= 8;
+      relaxationTurn *= 4;
     }
     await meter.breathe();
     if (meter.interruption !== undefined) break;

@@ -20,14 +20,14 @@ import { denominatorFor, FractionSum } from "./rounded-duals.ts";
 /** Trial solves of one vertex before its pseudo-costs are trusted. */
 const TRIALS = 2;
 /** Vertices tried at one node at most. */
-const CANDIDATES = 8;
+const CANDIDATES = 5;
 /** Rounds of new rows at the root, and at other nodes. */
 const ROOT_ROUNDS = 40;
 const NODE_ROUNDS = 1;
 /** A row that was no use in so many solves is taken out. */
-const IDLE_SOLVES = 60;
+const IDLE_SOLVES = 3;
 /** New rows in one round. */
-const ROWS_PER_ROUND = 60;
+const ROWS_PER_ROUND = 120;
 
 /**
  * Finds a heaviest stable set and the cases that prove it.
@@ -272,6 +272,7 @@ class RelaxationSearch {
         ),
       );
       evaluation = this.#evaluate(meter);
+      this.#dropIdleRows(IDLE_SOLVES);
       if (evaluation.point !== undefined) {
         this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
         if (value - evaluation.point.value < 1e-4 * Math.max(1, Math.abs(value)) && !isRoot) break;
