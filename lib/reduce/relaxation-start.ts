@@ -1,7 +1,8 @@
 /**
  * A good first flow for the relaxation: a symmetric one, the same on both halves of the cover, found
- * on the graph itself. Symmetry matters more than size, because what is left over is then balanced
- * in every region and finds its way nearby. O(n + m) time.
+ * on the graph itself in about O(n + m) time. On most graphs it leaves next to nothing for the
+ * maximum flow to do. Symmetry matters: what is left over is then balanced in every region, while a
+ * lopsided start leaves amounts that have to cross the whole graph.
  */
 import type { Meter } from "../run/meter.ts";
 import { LEFT_ONLY, type Relaxation, RIGHT_ONLY } from "./relaxation.ts";
@@ -10,6 +11,10 @@ import { LEFT_ONLY, type Relaxation, RIGHT_ONLY } from "./relaxation.ts";
 const TOP = 63;
 /** Up to so many neighbours are served in order of degree; where there are more it hardly matters. */
 const SORTED = 16;
+/** Arcs scanned for one mend before it is left to the maximum flow. */
+const MEND_SCANS = 8192;
+/** Arcs scanned for all mends together, for each arc of the graph. */
+const MEND_SCANS_PER_ARC = 24;
 /** The meter is told after so many scans. */
 const BATCH = 1 << 13;
 
@@ -17,7 +22,8 @@ const BATCH = 1 << 13;
  * Packs edges greedily, after R. M. Karp and M. Sipser, "Maximum matching in sparse random graphs"
  * (FOCS 1981), with weights: the vertex of least remaining degree gives what it has left to its
  * neighbours, those of least degree first, and leaves; so does every vertex that has nothing left.
- * On trees this is optimal, since a vertex of degree one loses nothing by it.
+ * On trees this is optimal, since a vertex of degree one loses nothing by it. A vertex that cannot
+ * give all away is mended at once, while there is still room nearby (see `Mender`).
  *
  * @param relaxation with no flow yet; flow, supply and demand are changed in place
  * @throws {Interrupted} when the meter runs out; the state is a flow all the same
@@ -67,7 +73,10 @@ export function startSymmetric(relaxation: Relaxation, meter: Meter): void {
     degree[v] = offsets[v + 1] - offsets[v];
     enter(v, Math.min(degree[v], TOP));
   }
+  const mender = new Mender(relaxation, rest);
+  let allowance = MEND_SCANS_PER_ARC * targets.length;
   const served = new Int32Array(SORTED);
+  // Until the end, the flow stands on both copies of every edge.
   try {
     while (least <= TOP) {
       const v = first[least];
@@ -76,21 +85,20 @@ export function startSymmetric(relaxation: Relaxation, meter: Meter): void {
         continue;
       }
       const from = offsets[v], end = offsets[v + 1];
-      let count = 0;
-      if (degree[v] <= SORTED) {
+      const sorted = degree[v] <= SORTED;
+      let choices = end - from;
+      if (sorted) {
+        choices = 0;
         for (let p = from; p < end; p++) {
           const u = targets[p];
           if (gone[u] !== 0) continue;
-          let at = count++;
+          let at = choices++;
           for (; at > 0 && degree[targets[served[at - 1]]] > degree[u]; at--) {
             served[at] = served[at - 1];
           }
           served[at] = p;
         }
       }
-      const sorted = degree[v] <= SORTED;
-      const both = copies[v] !== LEFT_ONLY && copies[v] !== RIGHT_ONLY;
-      const choices = sorted ? count : end - from;
       for (let at = 0; at < choices && rest[v] > 0; at++) {
         const p = sorted ? served[at] : from + at;
         const u = targets[p];
@@ -98,11 +106,16 @@ export function startSymmetric(relaxation: Relaxation, meter: Meter): void {
         const by = Math.min(rest[v], rest[u]);
         rest[v] -= by;
         rest[u] -= by;
-        if (both) {
-          flow[p] += by;
-          flow[twin[p]] += by;
-        } else flow[copies[v] === RIGHT_ONLY ? p : twin[p]] += by;
+        flow[p] += by;
+        flow[twin[p]] += by;
         if (rest[u] === 0) remove(u);
+      }
+      while (rest[v] > 0 && allowance > 0) {
+        const filled = mender.mend(v);
+        allowance -= mender.scans;
+        scans += mender.scans;
+        if (filled < 0) break;
+        if (rest[filled] === 0 && gone[filled] === 0) remove(filled);
       }
       remove(v);
       scans += end - from;
@@ -115,6 +128,119 @@ export function startSymmetric(relaxation: Relaxation, meter: Meter): void {
     for (let v = 0; v < n; v++) {
       if (copies[v] !== RIGHT_ONLY) supply[v] = rest[v];
       if (copies[v] !== LEFT_ONLY) demand[v] = rest[v];
+      else flow.fill(0, offsets[v], offsets[v + 1]);
     }
+  }
+}
+
+/**
+ * Finds room for what a vertex has left: a path v, u, x, u', … along which the packing can be raised
+ * and lowered in turn, ending at a vertex that has something left too. Searched breadth first, each
+ * vertex in one role only, so that the path is simple and serves both copies at once.
+ */
+class Mender {
+  /** Arcs scanned by the last call. */
+  scans = 0;
+  readonly #relaxation: Relaxation;
+  readonly #rest: Float64Array;
+  /** Length n: 2k when vertex met in role "raise from" by search k, 2k + 1 in role "raise into". */
+  readonly #seen: Int32Array;
+  /** Length n: the arc over which a vertex was met, in the row of the vertex before. */
+  readonly #over: Int32Array;
+  readonly #queue: Int32Array;
+  readonly #into: Int32Array;
+  /** Length n: 1 at vertices met by a search that ended nowhere; no later one ends there either. */
+  readonly #closed: Uint8Array;
+  #search = 0;
+
+  constructor(relaxation: Relaxation, rest: Float64Array) {
+    const { n } = relaxation.network;
+    this.#relaxation = relaxation;
+    this.#rest = rest;
+    this.#seen = new Int32Array(n);
+    this.#over = new Int32Array(n);
+    this.#queue = new Int32Array(n);
+    this.#into = new Int32Array(n);
+    this.#closed = new Uint8Array(n);
+  }
+
+  /**
+   * Sends what it can from v along one path.
+   *
+   * @param v a vertex with something left, none of its neighbours having anything
+   * @returns the vertex at the other end, or -1 when none was found
+   */
+  mend(v: number): number {
+    const { network: { offsets, targets, twin }, state: { flow } } = this.#relaxation;
+    const rest = this.#rest, seen = this.#seen, over = this.#over, queue = this.#queue;
+    const into = this.#into, closed = this.#closed;
+    const from = 2 * ++this.#search, to = from + 1;
+    let head = 0, tail = 0, met = 0, scans = 0, end = -1;
+    let sure = true; // whether finding nothing means that there is nothing
+    queue[tail++] = v;
+    seen[v] = from;
+    while (head < tail && end < 0) {
+      const x = queue[head++], rowEnd = offsets[x + 1];
+      for (let p = offsets[x]; p < rowEnd; p++) {
+        const u = targets[p];
+        if (closed[u] !== 0 || seen[u] === to) continue;
+        if (seen[u] === from) {
+          sure = false;
+          continue;
+        }
+        seen[u] = to;
+        over[u] = p;
+        if (rest[u] > 0) {
+          end = u;
+          break;
+        }
+        into[met++] = u;
+        const last = offsets[u + 1];
+        for (let q = offsets[u]; q < last; q++) {
+          if (flow[q] === 0) continue;
+          const y = targets[q];
+          if (seen[y] === from) continue;
+          if (seen[y] === to) {
+            sure = false;
+            continue;
+          }
+          seen[y] = from;
+          over[y] = q;
+          queue[tail++] = y;
+        }
+        scans += last - offsets[u];
+      }
+      scans += rowEnd - offsets[x];
+      if (scans > MEND_SCANS && head < tail) {
+        sure = false;
+        break;
+      }
+    }
+    this.scans = scans;
+    if (end < 0) {
+      if (sure) { for (let k = 0; k < met; k++) closed[into[k]] = 1; }
+      return -1;
+    }
+    let by = Math.min(rest[v], rest[end]);
+    for (let u = end;;) {
+      const x = targets[twin[over[u]]];
+      if (x === v) break;
+      const q = over[x];
+      if (flow[q] < by) by = flow[q];
+      u = targets[twin[q]];
+    }
+    rest[v] -= by;
+    rest[end] -= by;
+    for (let u = end;;) {
+      const p = over[u], x = targets[twin[p]];
+      flow[p] += by;
+      flow[twin[p]] += by;
+      if (x === v) break;
+      const q = over[x];
+      flow[q] -= by;
+      flow[twin[q]] -= by;
+      u = targets[twin[q]];
+    }
+    return end;
   }
 }

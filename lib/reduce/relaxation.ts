@@ -26,8 +26,11 @@ export interface Relaxation {
   readonly copies: Uint8Array;
 }
 
+/** Vertices are numbered in clusters of about so many, so that searches stay in the cache. */
+const CLUSTER = 1024;
+
 /**
- * Sets the network up, in breadth-first order.
+ * Sets the network up.
  *
  * @param graph any graph, parallel edges allowed
  * @param weights length n, integers >= 0 with a sum below 2^53
@@ -36,33 +39,7 @@ export interface Relaxation {
  */
 export function relaxationOf(graph: Graph, weights: Float64Array, meter: Meter): Relaxation {
   const { n, m, offsets, targets } = graph;
-  const order = new Int32Array(n), rank = new Int32Array(n).fill(-1);
-  const copies = new Uint8Array(n);
-  let tail = 0, scans = 0;
-  for (let root = 0; root < n; root++) {
-    if (rank[root] >= 0) continue;
-    const first = tail;
-    let bipartite = true;
-    rank[root] = tail;
-    order[tail++] = root;
-    for (let head = first; head < tail; head++) {
-      const v = order[head], other = 1 - copies[head];
-      for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) {
-        const u = targets[a];
-        if (rank[u] < 0) {
-          copies[tail] = other;
-          rank[u] = tail;
-          order[tail++] = u;
-        } else if (copies[rank[u]] !== other) bipartite = false;
-      }
-      scans += 1 + offsets[v + 1] - offsets[v];
-      if (scans >= BATCH) {
-        meter.tick(scans);
-        scans = 0;
-      }
-    }
-    if (!bipartite) copies.fill(BOTH, first, tail);
-  }
+  const { order, rank, copies } = clustered(graph, meter);
   const starts = new Int32Array(n + 1);
   const supply = new Float64Array(n), demand = new Float64Array(n);
   for (let i = 0; i < n; i++) {
@@ -110,4 +87,62 @@ export function doubledCostsOf(graph: Graph, relaxation: Relaxation): Float64Arr
     }
   }
   return doubled;
+}
+
+/**
+ * Numbers the vertices cluster by cluster, each a breadth-first ball around a vertex at the border
+ * of earlier ones, and finds out which components are bipartite.
+ *
+ * @returns the vertices in order, the number of each, and the copies in play, by number
+ */
+function clustered(
+  graph: Graph,
+  meter: Meter,
+): { order: Int32Array; rank: Int32Array; copies: Uint8Array } {
+  const { n, offsets, targets } = graph;
+  const order = new Int32Array(n), rank = new Int32Array(n).fill(-1);
+  const side = new Uint8Array(n), copies = new Uint8Array(n);
+  // A vertex enters `border` when it is met; `ball` holds those met in the present cluster.
+  const border = new Int32Array(n), ball = new Int32Array(n);
+  const met = new Uint8Array(n), inBall = new Int32Array(n).fill(-1);
+  let count = 0, scans = 0;
+  for (let root = 0; root < n; root++) {
+    if (met[root] !== 0) continue;
+    const first = count;
+    let bipartite = true, next = 0, entered = 0;
+    met[root] = 1;
+    border[entered++] = root;
+    while (next < entered) {
+      const centre = border[next++];
+      if (rank[centre] >= 0) continue;
+      let head = 0, tail = 0;
+      const cluster = count, full = count + CLUSTER;
+      ball[tail++] = centre;
+      inBall[centre] = cluster;
+      while (head < tail && count < full) {
+        const v = ball[head++], other = 1 - side[v];
+        rank[v] = count;
+        order[count++] = v;
+        for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) {
+          const u = targets[a];
+          if (met[u] === 0) {
+            met[u] = 1;
+            side[u] = other;
+            border[entered++] = u;
+          } else if (side[u] !== other) bipartite = false;
+          if (rank[u] < 0 && inBall[u] !== cluster) {
+            inBall[u] = cluster;
+            ball[tail++] = u;
+          }
+        }
+        scans += 1 + offsets[v + 1] - offsets[v];
+        if (scans >= BATCH) {
+          meter.tick(scans);
+          scans = 0;
+        }
+      }
+    }
+    for (let i = first; i < count; i++) copies[i] = bipartite ? side[order[i]] : BOTH;
+  }
+  return { order, rank, copies };
 }
