@@ -4,7 +4,9 @@ import type { Verdict } from "../certify/verdict.ts";
 import type { Instance } from "../instance/instance.ts";
 import type { Decomposition } from "../reduce/decomposition.ts";
 import type { Replacement } from "../reduce/replacement.ts";
+import type { Classification } from "../reduce/classify.ts";
 import { registerRenderer } from "../run/displayable.ts";
+import { renderClassification } from "./classification.ts";
 import { renderDecomposition } from "./decomposition.ts";
 import { renderInstance } from "./instance.ts";
 import { type Picture, renderPicture } from "./picture.ts";
@@ -15,6 +17,7 @@ import { renderWeightChart, type WeightChart } from "./weight-chart.ts";
 
 /** Fills the registry of renderers. Calling it twice does no harm. */
 export function registerRenderers(): void {
+  registerRenderer<Classification>("classification", renderClassification);
   registerRenderer<Instance>("instance", renderInstance);
   registerRenderer<Decomposition>("decomposition", renderDecomposition);
   registerRenderer<Replacement>("replacement", renderReplacement);
