@@ -3,26 +3,35 @@
  * attachments bounds its slack cost from below, and the gadget, tried out in every way, must cost no
  * more. Takes at most eight flows through each block; all plain algorithms of this floor.
  */
-import type { BlockReplacement, BlocksProof, Numbers } from "./certificate.ts";
+import type { BlockReplacement, BlocksProof, Numbers, Proof } from "./certificate.ts";
 import { type CostedGraph, graphInPlay } from "./blocks-graph.ts";
 import { BlockSlack } from "./blocks-slack.ts";
-import { neighbourLists, type Play, requireMultiplier, scratchFor } from "./play.ts";
-import { provenBound } from "./proof.ts";
+import { neighbourLists, type Play, requireBound, requireMultiplier, scratchFor } from "./play.ts";
 import { Rejected } from "./rejected.ts";
+import { requireList } from "./shape.ts";
+
+/** As `provenBound` in proof.ts, which calls this file. */
+type Prover = (play: Play, proof: Proof) => bigint;
 
 /** More would make trying a gadget out too slow. */
 const MOST_ATTACHMENTS = 3, MOST_VERTICES = 5;
+/** Each proof that stands in another holds a graph of its own. */
+const MOST_NESTING = 16;
 
 /**
  * The bound a blocks proof proves.
  *
  * @param play the graph and the vertices in play
  * @param proof costs, blocks with their gadgets, and proofs for what is left
+ * @param provenBound the bound that a proof of any rule proves; for what is left
  * @returns the bound of certificate.ts, rounded down, in scaled units
  * @throws {Rejected} naming the first thing that is wrong
  */
-export function blocksBound(play: Play, proof: BlocksProof): bigint {
+export function blocksBound(play: Play, proof: BlocksProof, provenBound: Prover): bigint {
   const { blocks } = proof;
+  if ((play.nesting ?? 0) >= MOST_NESTING) {
+    throw new Rejected(`blocks: more than ${MOST_NESTING} proofs, each in a part of the one before`);
+  }
   let moreVertices = 0, moreEdges = 0;
   blocks.forEach((block, b) => {
     const where = `block ${b}`;
@@ -58,7 +67,7 @@ export function blocksBound(play: Play, proof: BlocksProof): bigint {
   const slack = new BlockSlack(graph, vertices.length + moreVertices);
   const seen = new Uint8Array(vertices.length + moreVertices);
   blocks.forEach((block, b) => replace(graph, slack, seen, block, `block ${b}`));
-  bound += boundOfRest(play, graph, vertices, proof) - totalOf(graph);
+  bound += boundOfRest(play, graph, vertices, proof, provenBound) - totalOf(graph);
   // Rounded down, also below zero.
   return bound >= 0n ? bound / 2n : (bound - 1n) / 2n;
 }
@@ -149,6 +158,7 @@ function boundOfRest(
   graph: CostedGraph,
   vertices: Int32Array,
   proof: BlocksProof,
+  provenBound: Prover,
 ): bigint {
   const weights = costsAt(graph);
   // place[v] is v's number in the parts, or -1.
@@ -177,10 +187,12 @@ function boundOfRest(
     weights: Float64Array.from(order, (v) => weights[v]),
     nameOf: (i: number) => nameOf(order[i]),
     scratch: scratchFor(n),
+    nesting: (play.nesting ?? 0) + 1,
   };
   const seen = new Uint8Array(graph.vertices);
   let sum = 0n;
   proof.parts.forEach((part, p) => {
+    requireList(part.vertices, `blocks, part ${p}, "vertices"`);
     for (let i = 0; i < part.vertices.length; i++) {
       const at: unknown = part.vertices[i];
       const v = typeof at === "number" && Number.isInteger(at) && at >= 0 && at < n
@@ -191,11 +203,7 @@ function boundOfRest(
       seen[v] = 1;
     }
     const proved = provenBound({ ...inner, vertices: part.vertices }, part.proof);
-    if (typeof part.bound !== "number" || proved !== BigInt(Math.floor(part.bound))) {
-      throw new Rejected(
-        `blocks, part ${p}: the proof proves ${proved}, the certificate states ${part.bound}`,
-      );
-    }
+    requireBound(part.bound, proved, `blocks, part ${p}`);
     sum += proved;
   });
   for (let v = 0; v < graph.vertices; v++) {

@@ -6,6 +6,7 @@ import { packingBound } from "./packing.ts";
 import type { Play } from "./play.ts";
 import { projectiveBound } from "./projective.ts";
 import { Rejected } from "./rejected.ts";
+import { requireShape } from "./shape.ts";
 
 /**
  * The bound a proof proves for the vertices in play.
@@ -16,13 +17,14 @@ import { Rejected } from "./rejected.ts";
  * @throws {Rejected} naming the first thing that is wrong
  */
 export function provenBound(play: Play, proof: Proof): bigint {
+  requireShape(proof);
   switch (proof?.rule) {
     case "packing":
       return packingBound(play, proof);
     case "cases":
       return casesBound(play, proof);
     case "blocks":
-      return blocksBound(play, proof);
+      return blocksBound(play, proof, provenBound);
     case "projective":
       return projectiveBound(play, proof);
     default:

@@ -122,7 +122,7 @@ describe("blocks proofs", () => {
           nested,
         })
       ) {
-        expect(blocksBound(play, proof)).toBe(BigInt(optimum));
+        expect(blocksBound(play, proof, provenBound)).toBe(BigInt(optimum));
         expect(provenOrRejected(play, plain(proof))).toBe(optimum);
         seen++;
       }
