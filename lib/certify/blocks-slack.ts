@@ -97,28 +97,22 @@ export class BlockSlack {
     const { first, next, target, alive, cost } = this.#graph;
     const role = this.#role, rest = this.#rest, open = this.#open;
     for (const v of inside) open[v] = 1;
+    attachments.forEach((s, i) => open[s] = mask >> i & 1 ? 0 : 1);
     let bound = 0;
-    attachments.forEach((s, i) => {
-      const chosen = (mask >> i & 1) !== 0;
-      for (let a = first[s]; a >= 0; a = next[a]) {
-        const u = target[a];
-        if (alive[u] === 0 || role[u] === 0 || role[u] === 3) continue;
-        if (chosen) open[u] = 0;
-        else bound += cost[a];
-      }
-    });
     for (const v of inside) {
       rest[v] = 0;
       for (let a = first[v]; a >= 0; a = next[a]) {
         const u = target[a];
         if (alive[u] === 0) continue;
-        if (role[u] !== 3 && v < u) bound += cost[a];
+        if (role[u] === 3 && open[u] === 0) open[v] = 0;
+        else if (role[u] === 3 || v < u) bound += cost[a];
         rest[v] += cost[a];
         if (role[v] === 1) this.#flow[a] = 0;
       }
-      if (open[v] !== 0) bound -= rest[v];
     }
+    // Each cost is taken away at most twice, so nothing is rounded below either.
     if (!Number.isSafeInteger(bound)) throw new Rejected(`${where}: costs beyond 2^53`);
+    for (const v of inside) if (open[v] !== 0) bound -= rest[v];
     const left = inside.filter((v) => role[v] === 1 && open[v] !== 0);
     while (this.#raiseLevels(left)) for (const v of left) bound += this.#send(v);
     return bound;

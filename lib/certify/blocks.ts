@@ -30,7 +30,9 @@ const MOST_NESTING = 16;
 export function blocksBound(play: Play, proof: BlocksProof, provenBound: Prover): bigint {
   const { blocks } = proof;
   if ((play.nesting ?? 0) >= MOST_NESTING) {
-    throw new Rejected(`blocks: more than ${MOST_NESTING} proofs, each in a part of the one before`);
+    throw new Rejected(
+      `blocks: more than ${MOST_NESTING} proofs, each in a part of the one before`,
+    );
   }
   let moreVertices = 0, moreEdges = 0;
   blocks.forEach((block, b) => {

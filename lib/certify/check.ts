@@ -3,10 +3,11 @@
  * choice, looks every conflict up, and adds up the bounds that the certificate's proofs prove.
  */
 import type { Instance } from "../instance/instance.ts";
-import type { Certificate, CertificatePart } from "./certificate.ts";
-import { neighbourLists, type Play, scratchFor } from "./play.ts";
+import type { Certificate, CertificatePart, Numbers } from "./certificate.ts";
+import { neighbourLists, type Play, requireBound, scratchFor } from "./play.ts";
 import { provenBound } from "./proof.ts";
 import { Rejected } from "./rejected.ts";
+import { requireList } from "./shape.ts";
 import type { SolutionData } from "./solution.ts";
 import { Verdict } from "./verdict.ts";
 
@@ -17,6 +18,7 @@ import { Verdict } from "./verdict.ts";
  * @param solution a solution, or its JSON once parsed, or the JSON text itself
  * @returns the verdict; `valid` only when the choice is free of conflict, has the worth stated, and
  *   the certificate proves that nothing better exists. Anything malformed is a verdict, not an error.
+ *   What the solution tells of its parts, its time and the names of things is not looked at.
  *   O(n + m + size of the certificate) for the relaxation's parts; a part by cases or by an
  *   embedding adds what `certify/cases.ts` and its neighbours say.
  */
@@ -87,6 +89,11 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
   if (bound !== BigInt(weight)) {
     throw new Rejected(`the proofs add up to ${bound}, but the choice is worth ${weight}`);
   }
+  if (data.upperBound !== undefined && data.upperBound !== data.weight) {
+    throw new Rejected(
+      `the choice is worth ${data.weight}, but the solution states the bound ${data.upperBound}`,
+    );
+  }
   const asked = choose.length + leave.length === 0
     ? ""
     : ` with ${choose.length} items required and ${leave.length} ruled out`;
@@ -118,9 +125,10 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
   function requireGiven(
     name: "choose" | "leave",
     ids: readonly string[],
-    numbers: ArrayLike<number>,
-  ): number[] {
-    const asked = ids.map((id) => {
+    numbers: Numbers,
+  ): readonly number[] {
+    // Each once, so that nothing counts twice.
+    const asked = [...new Set(ids)].map((id) => {
       const i = instance.indexOf(id);
       if (i < 0) throw new Rejected(`"${name}": ${JSON.stringify(id)} is not in these tables`);
       if ((chosen[rank[i]] !== 0) !== (name === "choose")) {
@@ -130,8 +138,9 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
       }
       return rank[i];
     });
-    const stated = new Set(Array.from(numbers));
-    if (stated.size !== new Set(asked).size || asked.some((v) => !stated.has(v))) {
+    requireList(numbers, `certificate, "${name}"`);
+    const stated = new Set<number>(numbers);
+    if (stated.size !== asked.length || asked.some((v) => !stated.has(v))) {
       throw new Rejected(`"${name}": the certificate speaks of other items than the solution`);
     }
     return asked;
@@ -149,6 +158,7 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
     }
     const seen = new Uint8Array(n);
     parts.forEach((part, p) => {
+      requireList(part.vertices, `part ${p}, "vertices"`);
       for (let i = 0; i < part.vertices.length; i++) {
         const v = part.vertices[i];
         if (!Number.isInteger(v) || v < 0 || v >= n) {
@@ -178,14 +188,10 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
       } catch (error) {
         throw error instanceof Rejected ? new Rejected(`part ${p}: ${error.message}`) : error;
       }
-      if (typeof part.bound !== "number" || proved !== BigInt(Math.floor(part.bound))) {
-        throw new Rejected(
-          `part ${p}: the proof proves ${proved}, the certificate states ${part.bound}`,
-        );
-      }
+      requireBound(part.bound, proved, `part ${p}`);
       sum += proved;
     });
-    if (sum !== BigInt(Math.floor(certificate.bound))) {
+    if (!Number.isInteger(certificate.bound) || sum !== BigInt(certificate.bound)) {
       throw new Rejected(
         `the bounds of the parts add up to ${sum}, the certificate states ${certificate.bound}`,
       );

@@ -20,17 +20,22 @@ export interface Play {
   readonly nameOf: (v: number) => string;
   /** Room to work in, shared by the proofs of all parts and all zero between them. */
   readonly scratch: Scratch;
+  /** How many blocks proofs this one stands in; 0 if absent. */
+  readonly nesting?: number;
 }
 
 /** Arrays of length n, all zero while no proof is being checked. */
 export interface Scratch {
-  readonly inPlay: Uint8Array;
+  /** What `SlackLedger` notes of each vertex: whether it is in play, and has had a load. */
+  readonly state: Uint8Array;
   readonly load: Float64Array;
+  /** Places of vertices in a smaller graph, from 1. */
+  readonly place: Int32Array;
 }
 
 /** Fresh scratch for graphs with n vertices. */
 export function scratchFor(n: number): Scratch {
-  return { inPlay: new Uint8Array(n), load: new Float64Array(n) };
+  return { state: new Uint8Array(n), load: new Float64Array(n), place: new Int32Array(n) };
 }
 
 /**
@@ -98,6 +103,13 @@ export function requireEdge(play: Play, u: number, v: number, where: string): vo
     throw new Rejected(
       `${where}: ${play.nameOf(u)} and ${play.nameOf(v)} are not in conflict in these tables`,
     );
+  }
+}
+
+/** Refuses a stated bound that is not the proven one. @throws {Rejected} */
+export function requireBound(stated: unknown, proved: bigint, where: string): void {
+  if (typeof stated !== "number" || !Number.isInteger(stated) || BigInt(stated) !== proved) {
+    throw new Rejected(`${where}: the proof proves ${proved}, the certificate states ${stated}`);
   }
 }
 

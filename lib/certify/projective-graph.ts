@@ -24,18 +24,18 @@ export function innerGraph(play: Play): InnerGraph {
   vertices.sort();
   const n = vertices.length;
   if (n === 0) throw new Rejected("projective: the part has no vertices");
-  const position = new Int32Array(play.n).fill(-1);
+  const { place } = play.scratch;
   for (let v = 0; v < n; v++) {
-    if (position[vertices[v]] >= 0) {
+    if (place[vertices[v]] !== 0) {
       throw new Rejected(`projective: ${play.nameOf(vertices[v])} stands twice in the part`);
     }
-    position[vertices[v]] = v;
+    place[vertices[v]] = v + 1;
   }
   const offsets = new Int32Array(n + 1);
   for (let v = 0; v < n; v++) {
     offsets[v + 1] = offsets[v];
     for (let a = play.offsets[vertices[v]]; a < play.offsets[vertices[v] + 1]; a++) {
-      if (position[play.neighbours[a]] >= 0) offsets[v + 1]++;
+      if (place[play.neighbours[a]] !== 0) offsets[v + 1]++;
     }
   }
   const targets = new Int32Array(offsets[n]), reverse = new Int32Array(offsets[n]);
@@ -43,7 +43,7 @@ export function innerGraph(play: Play): InnerGraph {
   const met = offsets.slice(0, n);
   for (let v = 0, d = 0; v < n; v++) {
     for (let a = play.offsets[vertices[v]]; a < play.offsets[vertices[v] + 1]; a++) {
-      const u = position[play.neighbours[a]];
+      const u = place[play.neighbours[a]] - 1;
       if (u < 0) continue;
       targets[d] = u;
       if (u > v) {
@@ -54,6 +54,7 @@ export function innerGraph(play: Play): InnerGraph {
       d++;
     }
   }
+  for (const v of vertices) place[v] = 0;
   const inner = { vertices, offsets, targets, reverse };
   requireConnectedOdd(inner);
   return inner;

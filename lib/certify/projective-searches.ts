@@ -47,10 +47,10 @@ export function provenDistances(
   const sphere = new Searches(dual, span);
   for (let i = 0; i < starts.length; i++) {
     const where = `projective, search ${i}`;
-    const start = sources[starts[i]];
-    if (start === undefined) {
+    const start = starts[i];
+    if (!Number.isInteger(start) || start < 0 || start >= sources.length) {
       throw new Rejected(
-        `${where}: expected a source from 0 to ${sources.length - 1}, got ${starts[i]}`,
+        `${where}: expected a source from 0 to ${sources.length - 1}, got ${start}`,
       );
     }
     const depth = requireMultiplier(depths[i], `${where}, depth`);
@@ -60,7 +60,7 @@ export function provenDistances(
     }
     if (limit > MOST_LIMIT) throw new Rejected(`${where}: limit ${limit} is too large`);
     while (sphere.depth > depth) sphere.undo();
-    sphere.search(start, limit, where);
+    sphere.search(sources[start], limit, where);
     for (let j = 0; j < sources.length; j++) {
       const distance = sphere.difference(sources[j]);
       if (distance > proven[j]) proven[j] = distance;

@@ -94,8 +94,11 @@ function requireCosts(
   for (let v = 0; v < vertices.length; v++) {
     const weight = play.weights[vertices[v]];
     if (load[v] > span) span = load[v];
-    // A rounded product or sum would differ from 2w, which is exact and below 2^54.
-    if (load[v] * unit !== 2 * weight || !Number.isSafeInteger(load[v])) {
+    // A rounded sum is not safe; a rounded product is 2^53 at least.
+    const isDouble = 2 * weight <= Number.MAX_SAFE_INTEGER
+      ? load[v] * unit === 2 * weight
+      : BigInt(load[v]) * BigInt(unit) === 2n * BigInt(weight);
+    if (!isDouble || !Number.isSafeInteger(load[v])) {
       throw new Rejected(
         `projective: the costs at ${play.nameOf(vertices[v])} add up to ${load[v] * unit}, ` +
           `expected twice its weight, ${2 * weight}`,

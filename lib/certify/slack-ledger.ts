@@ -9,14 +9,17 @@ import { Rejected } from "./rejected.ts";
 import type { Play } from "./play.ts";
 import { WideSum } from "./wide-sum.ts";
 
+const IN = 1, TOUCHED = 2;
+
 export class SlackLedger {
   readonly #play: Play;
   readonly #denominator: number;
-  readonly #inPlay: Uint8Array;
+  /** For each vertex the sum of IN, while it is in play, and TOUCHED, once it has had a load. */
+  readonly #state: Uint8Array;
   readonly #load: Float64Array;
   readonly #sum = new WideSum();
-  /** Vertices that have carried a load, some more than once. */
-  readonly #loaded: number[] = [];
+  /** The vertices that are TOUCHED. */
+  readonly #touched: number[] = [];
   #count = 0;
 
   /**
@@ -26,15 +29,15 @@ export class SlackLedger {
   constructor(play: Play, denominator: number) {
     this.#play = play;
     this.#denominator = denominator;
-    this.#inPlay = play.scratch.inPlay;
+    this.#state = play.scratch.state;
     this.#load = play.scratch.load;
     for (let i = 0; i < play.vertices.length; i++) this.enter(play.vertices[i]);
   }
 
   /** Gives the scratch arrays back, all zero; the ledger is of no use afterwards. */
   release(): void {
-    for (let i = 0; i < this.#play.vertices.length; i++) this.#inPlay[this.#play.vertices[i]] = 0;
-    for (const v of this.#loaded) this.#load[v] = 0;
+    for (let i = 0; i < this.#play.vertices.length; i++) this.#state[this.#play.vertices[i]] = 0;
+    for (const v of this.#touched) this.#state[v] = this.#load[v] = 0;
   }
 
   /** How many vertices are in play. */
@@ -43,19 +46,19 @@ export class SlackLedger {
   }
 
   has(v: number): boolean {
-    return this.#inPlay[v] !== 0;
+    return (this.#state[v] & IN) !== 0;
   }
 
   /** Brings a vertex in that is out. */
   enter(v: number): void {
-    this.#inPlay[v] = 1;
+    this.#state[v] |= IN;
     this.#count++;
     this.#addRoom(v, 1);
   }
 
   /** Takes a vertex out that is in. */
   leave(v: number): void {
-    this.#inPlay[v] = 0;
+    this.#state[v] &= ~IN;
     this.#count--;
     this.#addRoom(v, -1);
   }
@@ -69,11 +72,14 @@ export class SlackLedger {
     for (let i = 0; i < vertices.length; i++) {
       const v = vertices[i];
       const load = this.#load[v] + change;
-      if (this.#load[v] === 0) this.#loaded.push(v);
+      if ((this.#state[v] & TOUCHED) === 0) {
+        this.#state[v] |= TOUCHED;
+        this.#touched.push(v);
+      }
       if (!Number.isSafeInteger(load)) {
         throw new Rejected(`multipliers at ${this.#play.nameOf(v)} add up to more than 2^53`);
       }
-      if (this.#inPlay[v] !== 0) {
+      if (this.has(v)) {
         this.#addRoom(v, -1);
         this.#load[v] = load;
         this.#addRoom(v, 1);
@@ -83,7 +89,7 @@ export class SlackLedger {
     }
     const product = change * rhs;
     if (Number.isSafeInteger(product)) this.#sum.add(product);
-    else this.#addBig(BigInt(change) * BigInt(rhs));
+    else this.#sum.addWide(BigInt(change) * BigInt(rhs));
   }
 
   /** Adds to the sum of the terms, for a right-hand side that changed. Below 2^53 in size. */
@@ -107,15 +113,6 @@ export class SlackLedger {
       return;
     }
     const room = BigInt(weight) * BigInt(this.#denominator) - BigInt(this.#load[v]);
-    if (room > 0n) this.#addBig(BigInt(sign) * room);
-  }
-
-  #addBig(value: bigint): void {
-    const chunk = 4503599627370496n; // 2^52
-    const high = value / chunk;
-    for (let i = high < 0n ? -high : high; i > 0n; i--) {
-      this.#sum.add(high < 0n ? -4503599627370496 : 4503599627370496);
-    }
-    this.#sum.add(Number(value - high * chunk));
+    if (room > 0n) this.#sum.addWide(BigInt(sign) * room);
   }
 }

@@ -166,7 +166,7 @@ describe("blocks proofs", () => {
       for (const other of data.blocks[star].doubled.keys()) data.blocks[star].doubled[other] += 1;
       data.blocks[star].doubled[e] += 1;
       expect(() => provenBound(play, data as unknown as BlocksProof)).toThrow(/the gadget costs/);
-      play.scratch.inPlay.fill(0);
+      play.scratch.state.fill(0);
       rejections++;
     }
     expect(rejections).toBeGreaterThanOrEqual(6);

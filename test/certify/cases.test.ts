@@ -47,7 +47,7 @@ describe("proofs by cases", () => {
       expect(Number(bound)).toBe(boundProved(graph, weights, proof));
       expect(Number(bound)).toBeGreaterThanOrEqual(bruteForce(graph, weights).weight);
       // The scratch arrays come back clean, or the next part of a certificate would be misjudged.
-      expect(play.scratch.inPlay.some((x) => x !== 0)).toBe(false);
+      expect(play.scratch.state.some((x) => x !== 0)).toBe(false);
       expect(play.scratch.load.some((x) => x !== 0)).toBe(false);
     }
   });

@@ -118,7 +118,7 @@ describe("the checker", () => {
     ["an exclusion the certificate does not know", (d) => d.leave = ["b"], "other items"],
     ["a list that is none", (d) => d.chosen = "all", '"chosen": expected a list'],
     ["parts that are none", (d) => d.certificate.parts = 3, '"parts": expected a list'],
-    ["a part without vertices", (d) => delete part(d, "cases").vertices, "malformed"],
+    ["a part without vertices", (d) => delete part(d, "cases").vertices, "expected a list"],
     ["a part without a proof", (d) => delete part(d, "cases").proof, "unknown rule"],
   ];
 
