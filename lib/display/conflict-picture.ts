@@ -5,6 +5,8 @@
 import type { Solution } from "../certify/solution.ts";
 import { type Graph, inducedSubgraph } from "../graph/graph.ts";
 import type { Instance } from "../instance/instance.ts";
+import type { Classification } from "../reduce/classify.ts";
+import type { Decomposition } from "../reduce/decomposition.ts";
 import { drawGraph, type VertexStyle } from "./graph-picture.ts";
 import { placesOf } from "./graphology.ts";
 import { PALETTE } from "./palette.ts";
@@ -19,6 +21,10 @@ export interface ConflictPictureOptions {
   readonly cycles?: readonly (readonly string[])[];
   /** Groups of items to fill alike, such as the blocks of a decomposition; all others are the core. */
   readonly blocks?: readonly (readonly string[])[];
+  /** Draws the witness cycles of its components strong, at most two of each; see `cycles`. */
+  readonly classification?: Classification;
+  /** Fills its blocks; see `blocks`. */
+  readonly decomposition?: Decomposition;
   /** Draw these items only, with the conflicts among them; all if unset. */
   readonly items?: readonly string[];
 }
@@ -36,7 +42,11 @@ export function drawConflicts(
   instance: Instance,
   options: ConflictPictureOptions = {},
 ): Picture {
-  const { solution, cycles = [], blocks } = options;
+  const { solution } = options;
+  const cycles = options.cycles ??
+    options.classification?.components.flatMap((c) => c.oddCyclePacking.cycles.slice(0, 2)) ?? [];
+  const blocks = options.blocks ??
+    options.decomposition?.components.flatMap((c) => c.blocks.map(({ items }) => items));
   const keep = new Uint8Array(instance.size).fill(options.items === undefined ? 1 : 0);
   for (const id of options.items ?? []) keep[indexOf(instance, id)] = 1;
   const { graph, vertices } = inducedSubgraph(instance.graph, keep);

@@ -19,9 +19,15 @@ export interface DiscLayout {
   readonly vertices: readonly number[];
   /** Cover edges in the disc; edge c of the cover is edge c >> 1 of H. */
   readonly edges: readonly number[];
-  /** Length 2n, by cover vertex; meaningful for `vertices`. The disc is the unit disc. */
+  /**
+   * By cover vertex (meaningful for `vertices`), then by face of the cover: face f at 2n + f
+   * (meaningful for faces inside). The disc is the unit disc.
+   */
   readonly x: Float64Array;
   readonly y: Float64Array;
+  /** Length 4m: the face of the cover on the left of each dart, and which faces are inside (1). */
+  readonly faceOf: Int32Array;
+  readonly inside: Uint8Array;
   /** Cover vertices on the rim in order; entry i and entry i + |C| are the same vertex of H. */
   readonly rim: readonly number[];
 }
@@ -51,7 +57,14 @@ export function layoutDisc(embedding: EvenFaceEmbedding): DiscLayout {
   }
   const vertices: number[] = [];
   for (let v = 0; v < cover.n; v++) if (present[v] !== 0) vertices.push(v);
-  return { vertices, edges, rim, ...relax(cover, rim, edges, faces.of, inside) };
+  return {
+    vertices,
+    edges,
+    rim,
+    faceOf: faces.of,
+    inside,
+    ...relax(cover, rim, edges, faces.of, inside),
+  };
 }
 
 /**

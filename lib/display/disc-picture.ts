@@ -3,7 +3,7 @@
  * rim comes back at the opposite point. Arrows on the rim say so.
  */
 import type { EvenFaceEmbedding } from "../parity/even-face-result.ts";
-import { layoutDisc } from "./disc-layout.ts";
+import { type DiscLayout, layoutDisc } from "./disc-layout.ts";
 import { drawLegend, type VertexStyle } from "./graph-picture.ts";
 import { PALETTE } from "./palette.ts";
 import { Canvas } from "./svg.ts";
@@ -47,6 +47,10 @@ export function drawDisc(picture: DiscPicture, title: string): string {
   canvas.group({ stroke: PALETTE.line, "stroke-width": 1 });
   for (const e of disc.edges) if (!isStrong(e)) canvas.add("line", line(e));
   canvas.end();
+  drawCrossing(canvas, disc, isStrong, (e) => {
+    const { x1, y1, x2, y2 } = line(e);
+    return [(x1 + x2) / 2, (y1 + y2) / 2];
+  }, (f) => [px(cover.n + f), py(cover.n + f)]);
   canvas.group({ stroke: PALETTE.accent, "stroke-width": 2.4, "stroke-linecap": "round" });
   for (const e of disc.edges) if (isStrong(e)) canvas.add("line", line(e));
   canvas.end();
@@ -71,6 +75,39 @@ export function drawDisc(picture: DiscPicture, title: string): string {
       : []),
   ], SIZE + 4);
   return canvas.toSvg(title);
+}
+
+/**
+ * The curve that crosses the strong edges, from the middle of one to the middle of the next through
+ * each face. Where more than two meet in a face they meet in its centre.
+ */
+function drawCrossing(
+  canvas: Canvas,
+  disc: DiscLayout,
+  isStrong: (e: number) => boolean,
+  middle: (e: number) => [number, number],
+  centre: (f: number) => [number, number],
+): void {
+  const around = new Map<number, [number, number][]>();
+  for (const e of disc.edges) {
+    if (!isStrong(e)) continue;
+    for (const f of [disc.faceOf[2 * e], disc.faceOf[2 * e + 1]]) {
+      if (disc.inside[f] !== 0) around.set(f, [...around.get(f) ?? [], middle(e)]);
+    }
+  }
+  canvas.group({
+    stroke: PALETTE.accent,
+    "stroke-width": 8,
+    "stroke-opacity": 0.25,
+    "stroke-linecap": "round",
+  });
+  for (const [f, middles] of around) {
+    const ends = middles.length === 2
+      ? [[middles[0], middles[1]]]
+      : middles.map((one) => [one, centre(f)]);
+    for (const [[x1, y1], [x2, y2]] of ends) canvas.add("line", { x1, y1, x2, y2 });
+  }
+  canvas.end();
 }
 
 /** The rim, with two arrows at opposite points that run the same way round. */

@@ -64,7 +64,10 @@ export async function drawEmbedding(
   const items = itemOf.reduce((sum, i) => sum + (i >= 0 ? 1 : 0), 0);
   const title = `${counted(items, "item")} and ${counted(graph.m, "conflict")} in the projective ` +
     `plane, every face even: a line that leaves the disc through the rim comes back at the ` +
-    `opposite point, and items on the rim are drawn twice.`;
+    `opposite point, and items on the rim are drawn twice.` +
+    (solution === undefined
+      ? ""
+      : " The broad curve crosses the conflicts with neither end chosen.");
   const svg = drawDisc({
     embedding,
     labels: Array.from(itemOf, (i) => labelOf(instance, i)),

@@ -21,6 +21,7 @@ import {
 } from "./report-sections.ts";
 import { REPORT_STYLE } from "./report-style.ts";
 import { sourceOf } from "./sources.ts";
+import { secondsText } from "./text.ts";
 
 /** What a report says beside its results. */
 export interface ReportOptions {
@@ -111,18 +112,25 @@ async function documentOf(
     `${body.join("")}</body>\n</html>\n`;
 }
 
-/** Results that have no section of their own, as their notebook form. */
+/** Results that have no section of their own, as their notebook form; without the time they took. */
 async function furtherSection(others: readonly Displayable[]): Promise<string> {
   const parts: string[] = [];
   for (const result of others) {
     const bundle = await render(result);
     const html = bundle["text/html"], svg = bundle["image/svg+xml"];
-    if (typeof html === "string") parts.push(`<div class="scroll">${html}</div>\n`);
-    else if (typeof svg === "string") {
+    if (typeof html === "string") {
+      parts.push(`<div class="scroll">${timeless(html, result)}</div>\n`);
+    } else if (typeof svg === "string") {
       parts.push(
         `<figure>${svg}<figcaption>${escapeHtml(result.toString())}</figcaption></figure>\n`,
       );
     } else parts.push(`<pre>${escapeHtml(result.toString())}</pre>\n`);
   }
   return parts.join("");
+}
+
+/** Takes the time a result took out of its notebook form, where it stands before "data …". */
+function timeless(html: string, result: Displayable): string {
+  const { elapsedMs } = result as { elapsedMs?: unknown };
+  return typeof elapsedMs === "number" ? html.replaceAll(`${secondsText(elapsedMs)} · `, "") : html;
 }
