@@ -9,13 +9,15 @@
 import type { Graph } from "../../graph/graph.ts";
 import { violatedCliques } from "../../polytope/clique-rows.ts";
 import type { Highs } from "../../polytope/highs.ts";
-import { rowsOfSets, stableSetModel } from "../../polytope/model.ts";
+import { stableSetModel } from "../../polytope/model.ts";
 import { violatedOddCycles } from "../../polytope/odd-cycle-rows.ts";
 import { Relaxation, type RelaxedPoint } from "../../polytope/relaxation.ts";
 import { Interrupted, type Meter } from "../../run/meter.ts";
 import type { Case, CaseTree } from "./case-tree.ts";
 import type { SearchResult } from "./cover-search.ts";
+import { branchScore, PseudoCosts } from "./pseudo-costs.ts";
 import { denominatorFor, FractionSum } from "./rounded-duals.ts";
+import { TermRows } from "./term-rows.ts";
 
 /** Trial solves of one vertex before its pseudo-costs are trusted. */
 const TRIALS = 2;
@@ -89,8 +91,6 @@ interface Frame {
   readonly trail: number;
   /** Proved for the whole node. */
   readonly bound: number;
-  readonly value: number;
-  readonly x: number;
 }
 
 const FREE = 0, CHOSEN = 1, OUT = 2;
@@ -105,17 +105,8 @@ class RelaxationSearch {
   #numbers = 0;
   readonly #graph: Graph;
   readonly #weights: Float64Array;
-  readonly #tree: CaseTree;
   readonly #relaxation: Relaxation;
-  /** By row: its term, its vertices, its right-hand side less the chosen vertices in it. */
-  #terms: number[] = [];
-  #sets: (readonly number[])[] = [];
-  #rhs: number[] = [];
-  /** By row: for how many solves its multiplier has been zero. */
-  #idle: number[] = [];
-  /** The rows each vertex is in. */
-  #rowsOf: number[][];
-  readonly #firstRows: number;
+  readonly #rows: TermRows;
   /** Weights handed to HiGHS are divided by this. */
   readonly #scale: number;
   /** Length n: FREE, CHOSEN or OUT; `#trail` lists what is not free, in order. */
@@ -127,9 +118,7 @@ class RelaxationSearch {
   readonly #load: Float64Array;
   readonly #frames: Frame[] = [];
   #currentBound = Infinity;
-  /** Pseudo-costs: summed loss of bound per unit of change, and trials; chosen and left. */
-  readonly #loss: [Float64Array, Float64Array];
-  readonly #trials: [Int32Array, Int32Array];
+  readonly #costs: PseudoCosts;
 
   constructor(
     graph: Graph,
@@ -142,7 +131,6 @@ class RelaxationSearch {
     const { n } = graph;
     this.#graph = graph;
     this.#weights = weights;
-    this.#tree = tree;
     this.bestChosen = start.chosen.slice();
     this.bestWeight = start.weight;
     let heaviest = 1;
@@ -151,16 +139,16 @@ class RelaxationSearch {
     let scale = 1;
     while (heaviest / scale > 4096) scale *= 2;
     this.#scale = scale;
-    this.#rowsOf = Array.from({ length: n }, () => []);
-    for (const clique of cliques) this.#addRow(clique, true);
-    this.#firstRows = cliques.length;
-    this.#relaxation = new Relaxation(highs, this.#model());
+    this.#rows = new TermRows(n, cliques, tree);
+    this.#relaxation = new Relaxation(highs, {
+      ...stableSetModel(weights.map((w) => w / scale), [], false),
+      rows: this.#rows.asRows(),
+    });
     this.#state = new Uint8Array(n);
     this.#lower = new Float64Array(n);
     this.#upper = new Float64Array(n);
     this.#load = new Float64Array(n);
-    this.#loss = [new Float64Array(n), new Float64Array(n)];
-    this.#trials = [new Int32Array(n), new Int32Array(n)];
+    this.#costs = new PseudoCosts(n);
   }
 
   dispose(): void {
@@ -190,14 +178,8 @@ class RelaxationSearch {
         at.on = vertex;
         at.chosen = {};
         at.left = {};
-        const { bound, point } = evaluation;
-        this.#frames.push({
-          node: at,
-          trail: this.#trail.length,
-          bound,
-          value: point?.value ?? bound,
-          x: point?.x[vertex] ?? 0.5,
-        });
+        const { bound } = evaluation;
+        this.#frames.push({ node: at, trail: this.#trail.length, bound });
         this.#currentBound = bound;
         this.#choose(vertex);
         node = at.chosen;
@@ -262,15 +244,9 @@ class RelaxationSearch {
         ? []
         : violatedOddCycles(this.#graph, x, ROWS_PER_ROUND, meter);
       if (cliques.length + cycles.length === 0) break;
-      const first = this.#sets.length;
-      for (const clique of cliques) this.#addRow(clique, true);
-      for (const cycle of cycles) this.#addRow(cycle, false);
-      this.#relaxation.add(
-        rowsOfSets(
-          this.#sets.slice(first),
-          this.#sets.slice(first).map((_, i) => this.#fullRhs(first + i)),
-        ),
-      );
+      const first = this.#rows.count;
+      this.#rows.add(cliques, cycles, (v) => this.#state[v] === CHOSEN);
+      this.#relaxation.add(this.#rows.asRows(first));
       evaluation = this.#evaluate(meter);
       this.#dropIdleRows(IDLE_SOLVES);
       if (evaluation.point !== undefined) {
@@ -283,50 +259,9 @@ class RelaxationSearch {
     return evaluation;
   }
 
-  /** Takes rows out again that have done nothing in more than so many solves in a row. */
   #dropIdleRows(patience: number): void {
-    const drop = new Uint8Array(this.#sets.length);
-    let entries = 0;
-    for (let row = this.#firstRows; row < drop.length; row++) {
-      if (this.#idle[row] <= patience) continue;
-      drop[row] = 1;
-      entries += this.#sets[row].length;
-    }
-    if (entries === 0) return;
-    this.#relaxation.remove(drop, entries);
-    const kept = <T>(list: readonly T[]): T[] => list.filter((_, row) => drop[row] === 0);
-    this.#sets = kept(this.#sets);
-    this.#rhs = kept(this.#rhs);
-    this.#terms = kept(this.#terms);
-    this.#idle = kept(this.#idle);
-    this.#rowsOf = this.#rowsOf.map(() => []);
-    this.#sets.forEach((set, row) => {
-      for (const v of set) this.#rowsOf[v].push(row);
-    });
-  }
-
-  #model() {
-    return {
-      ...stableSetModel(this.#weights.map((w) => w / this.#scale), [], false),
-      rows: rowsOfSets(this.#sets, this.#sets.map((_, row) => this.#fullRhs(row))),
-    };
-  }
-
-  #fullRhs(row: number): number {
-    return this.#terms[row] % 2 === 0 ? 1 : (this.#sets[row].length - 1) / 2;
-  }
-
-  #addRow(set: readonly number[], isClique: boolean): void {
-    const row = this.#sets.length;
-    this.#sets.push(set);
-    this.#terms.push(isClique ? this.#tree.clique(set) : this.#tree.oddCycle(set));
-    let rhs = this.#fullRhs(row);
-    for (const v of set) {
-      this.#rowsOf[v].push(row);
-      if (this.#state?.[v] === CHOSEN) rhs--;
-    }
-    this.#rhs.push(rhs);
-    this.#idle.push(0);
+    const dropped = this.#rows.dropIdle(patience);
+    if (dropped !== undefined) this.#relaxation.remove(dropped.drop, dropped.entries);
   }
 
   /** Solves the relaxation as it stands and computes the exact bound of its rounded multipliers. */
@@ -341,13 +276,15 @@ class RelaxationSearch {
     const D = this.denominator, load = this.#load, sum = new FractionSum(D);
     const terms: number[] = [];
     load.fill(0);
-    for (let row = 0; point !== undefined && row < this.#sets.length; row++) {
+    const rows = this.#rows;
+    for (let row = 0; point !== undefined && row < rows.count; row++) {
       const multiplier = Math.round(point.multipliers[row] * this.#scale * D);
-      this.#idle[row] = multiplier > 0 ? 0 : this.#idle[row] + 1;
-      if (multiplier <= 0 || !this.#sets[row].some((v) => this.#state[v] === FREE)) continue;
-      terms.push(this.#terms[row], multiplier);
-      sum.add(multiplier * this.#rhs[row]);
-      for (const v of this.#sets[row]) load[v] += multiplier;
+      rows.used(row, multiplier > 0);
+      const vertices = rows.vertices(row);
+      if (multiplier <= 0 || !vertices.some((v) => this.#state[v] === FREE)) continue;
+      terms.push(rows.term(row), multiplier);
+      sum.add(multiplier * rows.left(row));
+      for (const v of vertices) load[v] += multiplier;
     }
     let exact = true;
     for (let v = 0; v < n; v++) {
@@ -375,8 +312,9 @@ class RelaxationSearch {
       for (let a = offsets[v]; a < offsets[v + 1]; a++) {
         if (this.#state[targets[a]] === FREE) heft += this.#weights[targets[a]];
       }
-      const up = this.#cost(0, v, heft) * (1 - x), down = this.#cost(1, v, this.#weights[v]) * x;
-      listed.push({ v, score: Math.max(up, 1e-9) * Math.max(down, 1e-9) });
+      const chosen = this.#costs.mean(0, v, heft / this.#scale / 4) * (1 - x);
+      const left = this.#costs.mean(1, v, this.#weights[v] / this.#scale / 4) * x;
+      listed.push({ v, score: branchScore(chosen, left) });
     }
     // The point is integral but the bound not closed (rounding, or HiGHS failed): any free vertex.
     if (listed.length === 0) return this.#state.indexOf(FREE);
@@ -386,7 +324,7 @@ class RelaxationSearch {
     for (let i = 0; i < listed.length && i < CANDIDATES && misses < 4; i++) {
       const { v, score } = listed[i];
       let real = score;
-      if (Math.min(this.#trials[0][v], this.#trials[1][v]) < TRIALS) {
+      if (this.#costs.trials(v) < TRIALS) {
         const trail = this.#trail.length;
         this.#choose(v);
         const chosen = this.#evaluate(meter);
@@ -399,9 +337,9 @@ class RelaxationSearch {
         const losses = [chosen, left].map((e) =>
           Math.max(0, point.value - (e.point?.value ?? point.value))
         );
-        this.#learn(0, v, losses[0] / (1 - point.x[v]));
-        this.#learn(1, v, losses[1] / point.x[v]);
-        real = Math.max(losses[0], 1e-9) * Math.max(losses[1], 1e-9);
+        this.#costs.learn(0, v, losses[0] / (1 - point.x[v]));
+        this.#costs.learn(1, v, losses[1] / point.x[v]);
+        real = branchScore(losses[0], losses[1]);
       }
       if (real > bestScore) {
         [best, bestScore] = [v, real];
@@ -409,16 +347,6 @@ class RelaxationSearch {
       } else misses++;
     }
     return best;
-  }
-
-  #cost(side: 0 | 1, v: number, guess: number): number {
-    const trials = this.#trials[side][v];
-    return trials > 0 ? this.#loss[side][v] / trials : guess / this.#scale / 4;
-  }
-
-  #learn(side: 0 | 1, v: number, loss: number): void {
-    this.#loss[side][v] += loss;
-    this.#trials[side][v]++;
   }
 
   /** Records a better stable set when the point is one; says whether it was integral. */
@@ -452,7 +380,7 @@ class RelaxationSearch {
     this.#state[v] = CHOSEN;
     this.#trail.push(v);
     this.#chosenWeight += this.#weights[v];
-    for (const row of this.#rowsOf[v]) this.#rhs[row]--;
+    this.#rows.shift(v, -1);
     for (let a = offsets[v]; a < offsets[v + 1]; a++) {
       if (this.#state[targets[a]] === FREE) this.#leave(targets[a]);
     }
@@ -468,7 +396,7 @@ class RelaxationSearch {
       const v = this.#trail.pop() as number;
       if (this.#state[v] === CHOSEN) {
         this.#chosenWeight -= this.#weights[v];
-        for (const row of this.#rowsOf[v]) this.#rhs[row]++;
+        this.#rows.shift(v, 1);
       }
       this.#state[v] = FREE;
     }
