@@ -16,9 +16,8 @@ import { chartWeights, drawChart } from "./weight-chart.ts";
 /** Refused items in the section on the conflicts that decided. */
 const REFUSALS = 10;
 
-/** A section with its heading; nothing if there is nothing to say. */
+/** A section with its heading. */
 export function section(id: string, heading: string, body: string): string {
-  if (body === "") return "";
   return `<section aria-labelledby="${id}">\n<h2 id="${id}">${escapeHtml(heading)}</h2>\n${body}` +
     `</section>\n`;
 }

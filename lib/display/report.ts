@@ -84,25 +84,26 @@ async function documentOf(
 ): Promise<string> {
   const title = options.title ?? solution.instance.name;
   const description = `${answerOf(solution).headline} ${answerOf(solution).standing}.`;
-  const body = [
-    `<main>\n<h1>${escapeHtml(title)}</h1>\n`,
-    answerSection(solution, verdict),
-    instance === undefined ? "" : section(
-      "decided",
-      "Conflicts that decided",
-      decisiveSection(instance, solution),
-    ),
-    section("chosen", "Chosen items", chosenSection(instance, solution)),
-    section("structure", "Structure and further results", await furtherSection(others)),
-    section("method", "How it was solved", methodSection(solution)),
-    section("data", "Data", dataSection(instance, solution)),
-    section(
+  const sections: [id: string, heading: string, body: string][] = [
+    ["decided", "Conflicts that decided", instance ? decisiveSection(instance, solution) : ""],
+    ["chosen", "Chosen items", chosenSection(instance, solution)],
+    ["structure", "Structure and further results", await furtherSection(others)],
+    ["method", "How it was solved", methodSection(solution)],
+    ["data", "Data", dataSection(instance, solution)],
+    [
       "rerun",
       "How to get this again",
       rerunSection(solution, options.rerun, { ...options.options }),
-    ),
-    section("caution", "Caution", cautionSection()),
-    options.timing === false ? "" : section("timing", "Timing", timingSection(solution)),
+    ],
+    ["caution", "Caution", cautionSection()],
+    ["timing", "Timing", options.timing === false ? "" : timingSection(solution)],
+  ];
+  const present = sections.filter(([, , body]) => body !== "");
+  const body = [
+    `<main>\n<h1>${escapeHtml(title)}</h1>\n`,
+    answerSection(solution, verdict),
+    contents(present),
+    ...present.map(([id, heading, body]) => section(id, heading, body)),
     "</main>\n",
   ];
   return `<!DOCTYPE html>\n<html lang="en">\n<head>\n<meta charset="utf-8">\n` +
@@ -110,6 +111,14 @@ async function documentOf(
     `<meta name="description" content="${escapeHtml(description)}">\n` +
     `<title>${escapeHtml(title)}</title>\n<style>\n${REPORT_STYLE}\n</style>\n</head>\n<body>\n` +
     `${body.join("")}</body>\n</html>\n`;
+}
+
+/** Links to the sections, for a reader on a phone. */
+function contents(sections: readonly (readonly [id: string, heading: string, body: string])[]) {
+  const links = sections.map(([id, heading]) =>
+    `<li><a href="#${id}">${escapeHtml(heading)}</a></li>`
+  );
+  return `<nav aria-label="Sections"><ul>${links.join("\n")}</ul></nav>\n`;
 }
 
 /** Results that have no section of their own, as their notebook form; without the time they took. */

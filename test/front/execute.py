@@ -9,6 +9,7 @@ OUT.ipynb. The front end is nbclient, the one behind `jupyter nbconvert --execut
 
 import json
 import os
+import re
 import sys
 import time
 
@@ -16,10 +17,15 @@ import nbformat
 from nbclient import NotebookClient
 
 
+# What a line of progress says in the end; only runs longer than a moment have one.
+PROGRESS = re.compile(r"^[a-z ]+: (done|stopped|failed) after ")
+
+
 def shown(cell):
     """Outputs that show something: a display hook that has displayed by itself returns nothing."""
     return [o for o in cell.get("outputs", [])
-            if o["output_type"] in ("stream", "error") or o.get("data")]
+            if o["output_type"] in ("stream", "error") or
+            (o.get("data") and not PROGRESS.match(o["data"].get("text/plain", "")))]
 
 
 def main(path, runs, out):
@@ -50,6 +56,11 @@ def main(path, runs, out):
                 elif output.get("name") == "stderr":
                     stderr += 1
                     details.append(f"run {run}, cell {number}: stderr {output['text'][:200]}")
+    for cell in notebook.cells:
+        cell.metadata.pop("execution", None)  # times of day
+        if cell.cell_type == "code":
+            cell.outputs = shown(cell)
+    notebook.metadata.language_info = committed.metadata.language_info
     nbformat.write(notebook, out)
     expected = sum(len(shown(c)) for c in committed.cells if c.cell_type == "code")
     print(json.dumps({"runs": runs, "outputs": expected * runs, "lost": lost, "errors": errors,

@@ -1,5 +1,6 @@
 /**
- * `deno task test:front [--runs N]`: the notebooks in a real Jupyter.
+ * `deno task test:front [--runs N] [--only headless|stop|lab]`: the notebooks in a real Jupyter.
+ * `deno task test:front --update` runs them once and writes the outputs into the committed files.
  *
  * 1. Every committed notebook is executed headless N times (3 if unset), each time with a fresh
  *    kernel; no output may be lost, no error may occur.
@@ -170,7 +171,11 @@ async function printed(browser: Browser, notebook: string): Promise<string> {
 
 const { values } = parseArgs({
   args: Deno.args,
-  options: { runs: { type: "string", default: "3" }, only: { type: "string" } },
+  options: {
+    runs: { type: "string", default: "3" },
+    only: { type: "string" },
+    update: { type: "boolean" },
+  },
 });
 const runs = Number(values.runs);
 if (!Number.isInteger(runs) || runs < 1) {
@@ -182,6 +187,16 @@ await prepare();
 const notebooks = readdirSync(`${ROOT}notebooks`)
   .filter((name) => name.endsWith(".ipynb") && name !== SCRATCH).sort();
 expect(notebooks.length > 0, "there is no notebook");
+if (values.update) {
+  for (const name of notebooks) {
+    const path = `${ROOT}notebooks/${name}`;
+    const got = await python("execute.py", path, "1", path);
+    console.log(`${name}: ${got.errors} errors, ${got.stderr} lines of stderr`);
+    if (got.errors > 0) console.log(got.details.join("\n"));
+    await run([Deno.execPath(), "fmt", "--quiet", path], { cwd: ROOT });
+  }
+  Deno.exit(0);
+}
 if (wanted("headless")) {
   for (const name of notebooks) await check(`${name} headless`, () => headless(name, runs));
 }
