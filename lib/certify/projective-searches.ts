@@ -11,7 +11,7 @@
  * proves d(x, x̄) >= |a(x) - a(x̄)|.
  */
 import { BucketQueue, HeapQueue, type MonotoneQueue } from "../graph/heap.ts";
-import type { ProjectiveProof } from "./certificate.ts";
+import type { Numbers, ProjectiveProof } from "./certificate.ts";
 import { requireMultiplier } from "./play.ts";
 import type { SphereDual } from "./projective-dual.ts";
 import { Rejected } from "./rejected.ts";
@@ -44,7 +44,7 @@ export function provenDistances(
     throw new Rejected("projective: expected as many depths and limits as starts");
   }
   const proven = new Float64Array(sources.length);
-  const sphere = new Searches(dual, span);
+  const sphere = new Searches(dual, span, largestSum(depths, limits) + span);
   for (let i = 0; i < starts.length; i++) {
     const where = `projective, search ${i}`;
     const start = starts[i];
@@ -69,18 +69,39 @@ export function provenDistances(
   return proven;
 }
 
+/** The largest sum of limits from a root down to a search; at least as large as any potential. */
+function largestSum(depths: Numbers, limits: Numbers): number {
+  const above = new Float64Array(MOST_DEPTH + 1);
+  let largest = 0;
+  for (let i = 0; i < depths.length; i++) {
+    if (!(depths[i] >= 0 && depths[i] < MOST_DEPTH)) continue; // refused when its turn comes
+    above[depths[i] + 1] = above[depths[i]] + limits[i];
+    if (above[depths[i] + 1] > largest) largest = above[depths[i] + 1];
+  }
+  return largest;
+}
+
 class Searches {
-  /** For face x the potential a(x) at 2x, and at 2x + 1 its reduced distance during a search. */
-  readonly #state: Float64Array;
+  /**
+   * For face x the potential a(x) at 2x, and at 2x + 1 its reduced distance during a search,
+   * `#unreached` otherwise. In 32 bits where everything fits, for speed.
+   */
+  readonly #state: Int32Array | Float64Array;
+  readonly #unreached: number;
   readonly #queue: MonotoneQueue;
   /** For each search: the faces it changed and their former potentials. */
-  readonly #done: { faces: Int32Array; former: Float64Array }[] = [];
+  readonly #done: { faces: Int32Array; former: Int32Array | Float64Array }[] = [];
   readonly #touched: Int32Array;
 
-  constructor(readonly dual: SphereDual, span: number) {
-    const faces = 2 * dual.pairs;
-    this.#state = new Float64Array(2 * faces);
-    for (let x = 0; x < faces; x++) this.#state[2 * x + 1] = Infinity;
+  /**
+   * @param span the largest reduced cost
+   * @param most the largest potential or reduced distance that can occur
+   */
+  constructor(readonly dual: SphereDual, span: number, most: number) {
+    const faces = 2 * dual.pairs, narrow = most < 2 ** 30;
+    this.#state = narrow ? new Int32Array(2 * faces) : new Float64Array(2 * faces);
+    this.#unreached = narrow ? 2 ** 31 - 1 : Infinity;
+    for (let x = 0; x < faces; x++) this.#state[2 * x + 1] = this.#unreached;
     this.#touched = new Int32Array(faces);
     this.#queue = span <= MOST_BUCKETS ? new BucketQueue(span) : new HeapQueue();
   }
@@ -99,6 +120,7 @@ class Searches {
     const backward = this.depth % 2 === 1;
     const { offsets, ends, costs } = backward ? this.dual.into : this.dual.out;
     const state = this.#state, queue = this.#queue, touched = this.#touched;
+    const unreached = this.#unreached;
     const source = (state[2 * x] >= state[2 * (x ^ 1)]) === backward ? x ^ 1 : x;
     let count = 1, settled = 0, last = 0;
     queue.clear();
@@ -117,19 +139,20 @@ class Searches {
         const reached = r + costs[arc] + (backward ? -rise : rise);
         if (reached < r) throw new Error(`internal: ${where}: not a potential`);
         if (reached > limit || reached >= state[2 * far + 1]) continue;
-        if (state[2 * far + 1] === Infinity) touched[count++] = far;
+        if (state[2 * far + 1] === unreached) touched[count++] = far;
         state[2 * far + 1] = reached;
         queue.push(reached, far);
       }
     }
     // Every face within the limit was settled with its final value, whatever the queue did.
     if (settled !== count) throw new Error("internal: the queue lost a face");
-    const faces = touched.slice(0, count), former = new Float64Array(count);
+    const faces = touched.slice(0, count);
+    const former = state instanceof Int32Array ? new Int32Array(count) : new Float64Array(count);
     for (let i = 0; i < count; i++) {
       const y = faces[i], raised = limit - state[2 * y + 1];
       former[i] = state[2 * y];
       state[2 * y] += backward ? -raised : raised;
-      state[2 * y + 1] = Infinity;
+      state[2 * y + 1] = unreached;
     }
     this.#done.push({ faces, former });
   }

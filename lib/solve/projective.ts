@@ -58,7 +58,7 @@ export function solveEmbedded(
   const { graph, weights } = piece;
   const { unit, step, costs, around } = inUnits(graph, weights, doubledCosts);
   const dual = directedDual(graph, next, costs);
-  const curve = sourceCurve(graph, next, dual, around, meter);
+  const curve = sourceCurve(graph, dual, around, meter);
   const cycle = leastOneSidedCycle(graph, dual, curve, around, step, meter);
   const chosen = stableSetOfCycle(graph, cycle.crossed);
 

@@ -57,24 +57,19 @@ export function directedDual(
   const { m } = graph;
   const prev = mirrored(next);
   const left = new Int32Array(2 * m).fill(-1);
-  // Trace faces in breadth-first order; `queue` holds the darts of the faces in order.
+  // `queue` holds the darts of the even faces, face by face in breadth-first order.
   const queue = new Int32Array(2 * m);
-  let pairs = 0;
-  for (let root = 0; root < 2 * m; root++) {
-    if (left[root] >= 0) continue;
-    let head = 0, tail = 0;
-    tail = traceFace(root, tail);
-    while (head < tail) {
-      const d = queue[head++];
-      for (let d2 = next[d], i = 0; i < 2; i++, d2 = prev[d]) {
-        if (left[d2] < 0) tail = traceFace(d2, tail);
-      }
-    }
+  let pairs = 0, tail = 0;
+  if (m > 0) traceFace(0);
+  for (let head = 0; head < tail; head++) {
+    const d = queue[head];
+    if (left[next[d]] < 0) traceFace(next[d]);
+    if (left[prev[d]] < 0) traceFace(prev[d]);
   }
   return { pairs, out: rows(1), into: rows(0), left, prev };
 
-  /** Numbers the face left of dart d and its antipode; appends the darts of the first. */
-  function traceFace(start: number, tail: number): number {
+  /** Numbers the face on the left of a dart and its antipode. */
+  function traceFace(start: number): void {
     let d = start;
     do {
       left[d] = 2 * pairs;
@@ -83,7 +78,6 @@ export function directedDual(
       d = prev[next[d ^ 1] ^ 1];
     } while (d !== start);
     pairs++;
-    return tail;
   }
 
   /** The arcs in rows by their tails (from = 1) or by their heads (from = 0). */

@@ -41,7 +41,7 @@ export interface SearchPlan {
  * How far beyond what its own source needs a search goes, so that its children stay inside what it
  * settled: a fraction of the bound on the way to them and back. Measured on mirrored grids.
  */
-const REACH = 0.5;
+const REACH = 0.4;
 
 /**
  * Finds a least one-sided cycle.

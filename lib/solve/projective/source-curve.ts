@@ -1,127 +1,125 @@
 /**
- * Where least cycles are looked for: a closed one-sided curve through faces and vertices of the
- * embedding. Every one-sided cycle of the dual meets it, and can meet it only in a face, so the faces
- * on the curve serve as sources. O(m log m) time.
+ * Where least cycles are looked for: a closed one-sided walk through faces that share an edge. On the
+ * projective plane every one-sided cycle of the dual meets it in a face, so its faces serve as sources.
+ * O(m log m) time.
  *
- * To go from one face at a vertex to any other and back costs at most what going once around the
- * vertex costs. A curve is short when these costs are: then the distances from one source tell much
- * about its neighbours.
+ * From a face across an edge and back costs at most what going once around an end of the edge costs.
+ * The walk is short when these costs are: then the distances from one source tell much about its
+ * neighbours.
  */
 import type { Graph } from "../../graph/graph.ts";
 import { BucketQueue, HeapQueue, type MonotoneQueue } from "../../graph/heap.ts";
 import type { Meter } from "../../run/meter.ts";
 import type { DirectedDual } from "./directed-dual.ts";
 
-/** A curve on the sphere from a face to its antipode. */
+/** A walk on the sphere from a face to its antipode. */
 export interface SourceCurve {
-  /** The faces passed, consecutive ones at a common vertex; the antipode at the end is left out. */
+  /** The faces passed, consecutive ones share an edge; the antipode at the end is left out. */
   readonly faces: Int32Array;
-  /** As long as `faces`: costs of going around the vertices passed up to each, added up. */
+  /** As long as `faces`: the bounds on going there and back, added up along the walk. */
   readonly positions: Float64Array;
-  /** The costs of all vertices passed. */
-  readonly length: number;
 }
 
 /**
- * Finds a short one-sided curve: through the middle of one with few vertices, the shortest there is.
+ * Finds a short one-sided walk: through the middle of one with few faces, the shortest there is.
  *
  * @param graph H
- * @param next length 2m, its rotation system
  * @param around length n, what the dual arcs around each vertex cost together, integers > 0
+ * @param meter counts one unit for each arc scanned
  */
 export function sourceCurve(
   graph: Graph,
-  next: Int32Array,
   dual: DirectedDual,
   around: Float64Array,
   meter: Meter,
 ): SourceCurve {
-  const search = new CurveSearch(graph, next, dual);
-  const few = search.through(0, new Float64Array(graph.n).fill(1), meter);
-  return search.through(few.faces[few.faces.length >> 1], around, meter);
+  const few = fewestFaces(dual, 0, meter);
+  return shortest(graph, dual, around, few[few.length >> 1], meter);
 }
 
-/** Shortest paths over faces and vertices of the sphere, where passing a vertex costs going around it. */
-class CurveSearch {
-  readonly #distance: Float64Array;
-  readonly #from: Int32Array;
-  /** Length 2n: whether vertex (v,s) has been passed, at 2v + s. */
-  readonly #passed: Uint8Array;
-  /** Length pairs: a dart with the face 2k on its left. */
-  readonly #dartOf: Int32Array;
-
-  constructor(
-    readonly graph: Graph,
-    readonly next: Int32Array,
-    readonly dual: DirectedDual,
-  ) {
-    const { pairs, left } = dual;
-    this.#distance = new Float64Array(2 * pairs);
-    this.#from = new Int32Array(2 * pairs);
-    this.#passed = new Uint8Array(2 * graph.n);
-    this.#dartOf = new Int32Array(pairs);
-    for (let d = left.length - 1; d >= 0; d--) {
-      if ((left[d] & 1) === 0) this.#dartOf[left[d] >> 1] = d;
-    }
-  }
-
-  /**
-   * The shortest curve through one face.
-   *
-   * @param around length n, what passing each vertex costs
-   */
-  through(root: number, around: Float64Array, meter: Meter): SourceCurve {
-    const { graph, next, dual: { left, prev, pairs } } = this;
-    const distance = this.#distance.fill(Infinity), passed = this.#passed.fill(0);
-    const from = this.#from;
-    let span = 0;
-    for (let v = 0; v < graph.n; v++) if (around[v] > span) span = around[v];
-    const queue = queueFor(span, pairs);
-    distance[root] = 0;
-    queue.push(0, root);
-    for (let x = queue.pop(); x !== (root ^ 1); x = queue.pop()) {
-      if (x < 0) throw new Error("internal: no curve leads from a face to its antipode");
-      const key = queue.key;
-      if (key > distance[x]) continue;
-      // The corners of face 2k at black vertices lie left of the darts of one walk, those at white
-      // vertices left of the mirrored darts of its antipode's.
-      const first = this.#dartOf[x >> 1];
-      let work = 1;
-      for (let side = 0; side < 2; side++) {
-        const sheet = side ^ (x & 1), start = side === 0 ? first : first ^ 1;
-        let d = start;
-        do {
-          work++;
-          const v = (d & 1) === 0 ? graph.tails[d >> 1] : graph.heads[d >> 1];
-          if (passed[2 * v + sheet] === 0) {
-            passed[2 * v + sheet] = 1;
-            const reached = key + around[v];
-            let corner = d;
-            do {
-              work++;
-              const y = left[corner] ^ sheet;
-              if (reached < distance[y]) {
-                distance[y] = reached;
-                from[y] = x;
-                queue.push(reached, y);
-              }
-              corner = next[corner];
-            } while (corner !== d);
-          }
-          d = prev[next[d ^ 1] ^ 1];
-        } while (d !== start);
+/** A walk with as few faces as any from this face to its antipode. O(m) time. */
+function fewestFaces({ pairs, out, into }: DirectedDual, root: number, meter: Meter): Int32Array {
+  const from = new Int32Array(2 * pairs).fill(-1), queue = new Int32Array(2 * pairs);
+  from[root] = root;
+  queue[0] = root;
+  let tail = 1, work = 0;
+  for (let head = 0; from[root ^ 1] < 0; head++) {
+    if (head === tail) throw notReached();
+    const x = queue[head];
+    for (let side = 0; side < 2; side++) {
+      const { offsets, ends } = side === 0 ? out : into;
+      for (let a = offsets[x >> 1]; a < offsets[(x >> 1) + 1]; a++) {
+        const y = ends[a] ^ (x & 1);
+        work++;
+        if (from[y] >= 0) continue;
+        from[y] = x;
+        queue[tail++] = y;
       }
-      meter.tick(work);
     }
-    const faces: number[] = [];
-    for (let x = root ^ 1; x !== root;) faces.push(x = from[x]);
-    faces.reverse();
-    return {
-      faces: Int32Array.from(faces),
-      positions: Float64Array.from(faces, (x) => distance[x]),
-      length: distance[root ^ 1],
-    };
+    if (work >= UNITS_PER_TICK) {
+      meter.tick(work);
+      work = 0;
+    }
   }
+  return walkBack(from, root);
+}
+
+/** The walk from this face to its antipode that is shortest in the bounds on going and coming back. */
+function shortest(
+  graph: Graph,
+  { pairs, out, into }: DirectedDual,
+  around: Float64Array,
+  root: number,
+  meter: Meter,
+): SourceCurve {
+  const across = (e: number) => Math.min(around[graph.tails[e]], around[graph.heads[e]]);
+  const outLengths = Float64Array.from(out.edges, across);
+  const intoLengths = Float64Array.from(into.edges, across);
+  let span = 0;
+  for (let a = 0; a < outLengths.length; a++) if (outLengths[a] > span) span = outLengths[a];
+  const queue = queueFor(span, pairs);
+  const from = new Int32Array(2 * pairs).fill(-1);
+  const distance = new Float64Array(2 * pairs).fill(Infinity);
+  distance[root] = 0;
+  queue.push(0, root);
+  let work = 0;
+  for (let x = queue.pop(); x !== (root ^ 1); x = queue.pop()) {
+    if (x < 0) throw notReached();
+    const key = queue.key;
+    if (key > distance[x]) continue;
+    for (let side = 0; side < 2; side++) {
+      const { offsets, ends } = side === 0 ? out : into;
+      const lengths = side === 0 ? outLengths : intoLengths;
+      for (let a = offsets[x >> 1]; a < offsets[(x >> 1) + 1]; a++) {
+        const y = ends[a] ^ (x & 1), reached = key + lengths[a];
+        work++;
+        if (reached >= distance[y]) continue;
+        distance[y] = reached;
+        from[y] = x;
+        queue.push(reached, y);
+      }
+    }
+    if (work >= UNITS_PER_TICK) {
+      meter.tick(work);
+      work = 0;
+    }
+  }
+  const faces = walkBack(from, root);
+  return { faces, positions: Float64Array.from(faces, (x) => distance[x]) };
+}
+
+/** Arcs scanned between two ticks of the meter. */
+const UNITS_PER_TICK = 4096;
+
+/** The faces from `root` up to, and without, its antipode. */
+function walkBack(from: Int32Array, root: number): Int32Array {
+  const faces: number[] = [];
+  for (let x = root ^ 1; x !== root;) faces.push(x = from[x]);
+  return Int32Array.from(faces.reverse());
+}
+
+function notReached(): Error {
+  return new Error("internal: no walk leads from a face to its antipode");
 }
 
 /**
