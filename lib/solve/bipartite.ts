@@ -12,6 +12,7 @@ import { startSymmetric } from "../reduce/relaxation-start.ts";
 import { exactSum } from "../run/exact.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
 import type { Declined, Piece, Solved } from "./engine.ts";
+import { greedyStableSet } from "./greedy.ts";
 
 /**
  * Solves a bipartite piece to optimality.
@@ -55,7 +56,7 @@ export function solveBipartite(piece: Piece, meter: Meter): Solved | Declined {
     };
   } catch (stop) {
     if (!(stop instanceof Interrupted)) throw stop;
-    const chosen = heavierOf(piece, heavierSide(piece, side), greedy(piece));
+    const chosen = heavierOf(piece, heavierSide(piece, side), greedyStableSet(graph, weights));
     return {
       status: "feasible",
       chosen,
@@ -87,32 +88,6 @@ function heavierSide({ weights }: Piece, side: Uint8Array): Uint8Array {
   let balance = 0;
   for (let v = 0; v < side.length; v++) balance += side[v] === 0 ? weights[v] : -weights[v];
   return side.map((s) => s === (balance >= 0 ? 0 : 1) ? 1 : 0);
-}
-
-/**
- * Takes vertices by falling weight per closed neighbourhood, in classes of an eighth of a power of
- * two, as long as they fit. O(n + m) time.
- */
-function greedy({ graph, weights }: Piece): Uint8Array {
-  const { n, offsets, targets } = graph;
-  const CLASSES = 1024, middle = 512;
-  const start = new Int32Array(CLASSES + 1), of = new Int16Array(n);
-  for (let v = 0; v < n; v++) {
-    const ratio = weights[v] / (1 + offsets[v + 1] - offsets[v]);
-    of[v] = middle - Math.floor(8 * Math.log2(ratio));
-    start[of[v] + 1]++;
-  }
-  for (let c = 0; c < CLASSES; c++) start[c + 1] += start[c];
-  const order = new Int32Array(n);
-  for (let v = 0; v < n; v++) order[start[of[v]]++] = v;
-  const chosen = new Uint8Array(n), blocked = new Uint8Array(n);
-  for (let at = 0; at < n; at++) {
-    const v = order[at];
-    if (blocked[v] !== 0) continue;
-    chosen[v] = 1;
-    for (let a = offsets[v]; a < offsets[v + 1]; a++) blocked[targets[a]] = 1;
-  }
-  return chosen;
 }
 
 function heavierOf({ weights }: Piece, a: Uint8Array, b: Uint8Array): Uint8Array {

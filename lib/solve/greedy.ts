@@ -2,20 +2,28 @@
 import type { PackingProof } from "../certify/certificate.ts";
 import type { Graph } from "../graph/graph.ts";
 
+/** Classes of worth: eighths of a power of two, from 2^-64 to 2^64. */
+const CLASSES = 1024;
+
 /**
- * A maximal stable set, built by weight per closed neighbourhood, greatest first.
+ * A maximal stable set, built by weight per closed neighbourhood, greatest first, up to the eighth
+ * root of two; within that, and on ties, in order of number.
  *
  * @param graph any graph
  * @param weights length n, positive
- * @returns length n, entries 0 and 1. O(m + n log n) time.
+ * @returns length n, entries 0 and 1. O(n + m) time: even a run that stops at once can afford it.
  */
 export function greedyStableSet(graph: Graph, weights: Float64Array): Uint8Array {
   const { n, offsets, targets } = graph;
-  const worth = new Float64Array(n);
-  for (let v = 0; v < n; v++) worth[v] = weights[v] / (offsets[v + 1] - offsets[v] + 1);
-  const order = Int32Array.from({ length: n }, (_, v) => v).sort((u, v) =>
-    worth[v] - worth[u] || u - v
-  );
+  const start = new Int32Array(CLASSES + 1), classOf = new Int16Array(n);
+  for (let v = 0; v < n; v++) {
+    const worth = weights[v] / (offsets[v + 1] - offsets[v] + 1);
+    classOf[v] = CLASSES / 2 - Math.floor(8 * Math.log2(worth));
+    start[classOf[v] + 1]++;
+  }
+  for (let c = 0; c < CLASSES; c++) start[c + 1] += start[c];
+  const order = new Int32Array(n);
+  for (let v = 0; v < n; v++) order[start[classOf[v]]++] = v;
   const chosen = new Uint8Array(n), blocked = new Uint8Array(n);
   for (const v of order) {
     if (blocked[v] !== 0) continue;
