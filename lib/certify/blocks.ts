@@ -7,7 +7,7 @@ import type { BlockReplacement, BlocksProof, Numbers, Proof } from "./certificat
 import { type CostedGraph, graphInPlay } from "./blocks-graph.ts";
 import { BlockSlack } from "./blocks-slack.ts";
 import { neighbourLists, type Play, requireBound, requireMultiplier, scratchFor } from "./play.ts";
-import { Rejected } from "./rejected.ts";
+import { Rejected, within } from "./rejected.ts";
 import { requireList } from "./shape.ts";
 
 /** As `provenBound` in proof.ts, which calls this file. */
@@ -204,8 +204,12 @@ function boundOfRest(
       if (seen[v] !== 0) throw new Rejected(`blocks, part ${p}: ${nameOf(v)} is in two parts`);
       seen[v] = 1;
     }
-    const proved = provenBound({ ...inner, vertices: part.vertices }, part.proof);
-    requireBound(part.bound, proved, `blocks, part ${p}`);
+    const where = `blocks, part ${p}`;
+    const proved = within(
+      where,
+      () => provenBound({ ...inner, vertices: part.vertices }, part.proof),
+    );
+    requireBound(part.bound, proved, where);
     sum += proved;
   });
   for (let v = 0; v < graph.vertices; v++) {

@@ -6,7 +6,7 @@ import type { Instance } from "../instance/instance.ts";
 import type { Certificate, CertificatePart, Numbers } from "./certificate.ts";
 import { neighbourLists, type Play, requireBound, scratchFor } from "./play.ts";
 import { provenBound } from "./proof.ts";
-import { Rejected } from "./rejected.ts";
+import { Rejected, within } from "./rejected.ts";
 import { requireList } from "./shape.ts";
 import type { SolutionData } from "./solution.ts";
 import { Verdict } from "./verdict.ts";
@@ -182,12 +182,7 @@ function proveOptimal(instance: Instance, data: SolutionData): string {
     const scratch = scratchFor(n);
     certificate.parts.forEach((part, p) => {
       const play: Play = { n, ...lists, weights, vertices: part.vertices, nameOf, scratch };
-      let proved: bigint;
-      try {
-        proved = provenBound(play, part.proof);
-      } catch (error) {
-        throw error instanceof Rejected ? new Rejected(`part ${p}: ${error.message}`) : error;
-      }
+      const proved = within(`part ${p}`, () => provenBound(play, part.proof));
       requireBound(part.bound, proved, `part ${p}`);
       sum += proved;
     });

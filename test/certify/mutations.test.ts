@@ -1,0 +1,71 @@
+import { describe, expect, it } from "vitest";
+import { check } from "../../lib/certify/check.ts";
+import { Random } from "../../lib/run/random.ts";
+import {
+  type Bendable,
+  honest,
+  KINDS,
+  mutate,
+  optimumAsAsked,
+  restated,
+} from "../support/mutations.ts";
+
+/** The rules of the proofs in a certificate, with those that stand in others: "blocks > cases". */
+function rulesOf(parts: Bendable[], above = ""): string[] {
+  return parts.flatMap(({ proof }) => {
+    const rule = above + proof.rule;
+    return [rule, ...rulesOf(proof.parts ?? [], `${rule} > `)];
+  });
+}
+
+describe("the checker", () => {
+  const seen = new Set<string>();
+
+  KINDS.forEach((kind, k) => {
+    it(`never finds less than the optimum proved, whatever is changed: ${kind}`, async () => {
+      const random = new Random(100 + k);
+      let accepted = 0, rejected = 0;
+      for (let i = 0; i < 14; i++) {
+        const { instance, text } = await honest(kind, random);
+        const data = JSON.parse(text);
+        const optimum = optimumAsAsked(instance, data);
+        expect(restated(instance, data) as number).toBeGreaterThanOrEqual(optimum);
+        if (kind !== "cases") {
+          expect(check(instance, text)).toMatchObject({ valid: true });
+          expect(data.weight).toBe(optimum);
+        }
+        for (const rule of rulesOf(data.certificate.parts)) seen.add(rule);
+        for (let j = 0; j < 60; j++) {
+          const changed = JSON.parse(text);
+          for (let more = random.below(3); more >= 0; more--) mutate(random, changed);
+          const bound = restated(instance, changed);
+          if (typeof bound === "string") {
+            rejected++;
+            continue;
+          }
+          accepted++;
+          const best = optimumAsAsked(instance, changed);
+          if (bound < best) throw new Error(`${bound} for ${best}: ${JSON.stringify(changed)}`);
+        }
+      }
+      expect(Math.min(accepted, rejected)).toBeGreaterThan(100);
+    });
+  });
+
+  it("met every rule, also inside blocks and inside blocks within blocks", () => {
+    const met = [...seen].sort();
+    for (
+      const rule of [
+        "blocks",
+        "blocks > blocks",
+        "blocks > cases",
+        "blocks > projective",
+        "cases",
+        "packing",
+        "projective",
+      ]
+    ) {
+      expect(met).toContain(rule);
+    }
+  });
+});
