@@ -5,11 +5,11 @@
  */
 import type { Graph } from "../graph/graph.ts";
 import type { Meter } from "../run/meter.ts";
-import { balance, closeCycle, type OddCycle } from "./balance.ts";
+import { closeCycle, type OddCycle } from "./balance.ts";
 
 /** Arcs scanned in each of the two phases, for each arc of the graph, before the phase ends. */
 const BALL_SCANS_PER_ARC = 8;
-const GLOBAL_SCANS_PER_ARC = 40;
+const WHOLE_SCANS_PER_ARC = 40;
 /** Arcs that each phase may scan whatever the size of the graph. */
 const SCANS_AT_LEAST = 5_000_000;
 
@@ -17,7 +17,8 @@ const SCANS_AT_LEAST = 5_000_000;
  * Picks disjoint odd cycles.
  *
  * Phase 1 looks in balls of growing radius around each vertex and takes the first odd cycle a ball
- * holds; phase 2 takes whatever odd cycle is left until there is none or the work is spent.
+ * holds; phase 2 takes the first odd cycle that a search without bound closes. Either ends when no
+ * odd cycle is left or its work is spent.
  *
  * @param graph any graph
  * @param even length m, nonzero where an edge is even; absent: every edge is odd
@@ -39,26 +40,30 @@ export function greedyOddCycles(
   };
   const allowance = (perArc: number): number => Math.max(perArc * 2 * m, SCANS_AT_LEAST);
   const balls = new Balls(graph, even, free);
-  let spent = 0;
-  const most = allowance(BALL_SCANS_PER_ARC);
-  for (let radius = 1; radius < n && spent < most; radius = Math.ceil(radius * 1.5)) {
+  for (let radius = 1, left = allowance(BALL_SCANS_PER_ARC); radius < n && left > 0;) {
     let whole = true;
-    for (let root = 0; root < n && spent < most; root++) {
+    for (let root = 0; root < n && left > 0; root++) {
       if (free[root] === 0) continue;
       const cycle = balls.search(root, radius);
-      spent += balls.scanned;
+      left -= balls.scanned;
       meter.tick(1 + balls.scanned);
-      whole &&= balls.exhausted;
       if (cycle !== undefined) take(cycle);
+      if (balls.exhausted) balls.setAside();
+      else whole = false;
     }
-    if (whole) return cycles;
+    if (whole && left > 0) return cycles;
+    radius = Math.ceil(radius * 1.5);
   }
-  for (spent = 0; spent < allowance(GLOBAL_SCANS_PER_ARC);) {
-    const { oddCycle } = balance(graph, even, free);
-    spent += 2 * m + n + 1;
-    meter.tick(2 * m + n + 1);
-    if (oddCycle === undefined) break;
-    take(oddCycle);
+  for (let root = 0, left = allowance(WHOLE_SCANS_PER_ARC); root < n && left > 0;) {
+    if (free[root] === 0) {
+      root++;
+      continue;
+    }
+    const cycle = balls.search(root, n);
+    left -= balls.scanned;
+    meter.tick(1 + balls.scanned);
+    if (cycle === undefined) balls.setAside();
+    else take(cycle);
   }
   return cycles;
 }
@@ -75,6 +80,8 @@ class Balls {
   readonly #parentEdge: Int32Array;
   readonly #queue: Int32Array;
   #now = 0;
+  /** How many entries of the queue the last search filled, if it found no odd cycle. */
+  #seen = 0;
 
   constructor(
     readonly graph: Graph,
@@ -86,6 +93,11 @@ class Balls {
     this.#depth = new Int32Array(graph.n);
     this.#parentEdge = new Int32Array(graph.n);
     this.#queue = new Int32Array(graph.n);
+  }
+
+  /** Takes what the last search saw, all of a balanced component, out of the search. */
+  setAside(): void {
+    for (let i = 0; i < this.#seen; i++) this.free[this.#queue[i]] = 0;
   }
 
   /** The odd cycle closed first within `radius` steps of the root. */
@@ -100,6 +112,7 @@ class Balls {
     depth[root] = 0;
     this.scanned = 0;
     this.exhausted = true;
+    this.#seen = 0;
     while (head < tail) {
       const v = queue[head++];
       this.scanned += offsets[v + 1] - offsets[v];
@@ -123,6 +136,7 @@ class Balls {
         }
       }
     }
+    this.#seen = tail;
     return undefined;
   }
 }
