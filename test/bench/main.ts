@@ -6,10 +6,12 @@ import { parseArgs } from "node:util";
 import process from "node:process";
 import { blocksBench } from "./blocks.bench.ts";
 import { branchBench } from "./branch.bench.ts";
+import { projectiveBench } from "./projective.bench.ts";
 
 const benches: Readonly<Record<string, (timeLimitMs: number) => Promise<unknown>>> = {
   blocks: (timeLimitMs) => blocksBench(timeLimitMs),
   branch: (timeLimitMs) => branchBench(timeLimitMs),
+  projective: (timeLimitMs) => projectiveBench(timeLimitMs),
 };
 
 const { values, positionals } = parseArgs({

@@ -1,0 +1,174 @@
+/**
+ * The projective engine on square mirrored grids from 25 to 1,000,000 items, beside the half-integral
+ * kernel that every run needs, and beside HiGHS. Weights are w = Mᵀc for random edge costs c, the
+ * kind that leaves the whole graph in the kernel. Every answer is checked by its certificate.
+ */
+import process from "node:process";
+import { neighbourLists, scratchFor } from "../../lib/certify/play.ts";
+import { projectiveBound } from "../../lib/certify/projective.ts";
+import type { ProjectiveProof } from "../../lib/certify/certificate.ts";
+import type { Graph } from "../../lib/graph/graph.ts";
+import { runHighs } from "../../lib/polytope/highs.ts";
+import { stableSetModel } from "../../lib/polytope/model.ts";
+import { halfIntegralKernel } from "../../lib/reduce/kernel.ts";
+import { Meter } from "../../lib/run/meter.ts";
+import { Random } from "../../lib/run/random.ts";
+import { solveProjective } from "../../lib/solve/projective.ts";
+import { isStable, weightOf } from "../oracle/brute-force.ts";
+import { hardWeights, mirroredGrid } from "../support/mirrored-grid.ts";
+
+/** One line of the table; times in milliseconds. */
+export interface ProjectiveRow {
+  readonly n: number;
+  readonly weight: number;
+  /** The half-integral kernel alone. */
+  readonly kernel: number;
+  /** The engine: recognition of the embedding, searches, lifting, certificate. */
+  readonly engine: number;
+  /** The check of the certificate. */
+  readonly check: number;
+  /** (kernel + engine + check) / kernel. */
+  readonly ratio: number;
+  readonly searches: number;
+  /** HiGHS on edge rows; absent where it was not run. */
+  readonly highs?: number;
+  /** What HiGHS ended with. */
+  readonly highsSays?: string;
+  /** Peak resident memory of the process so far, in megabytes; rows go up in size. */
+  readonly peakMegabytes: number;
+}
+
+/** Sides of the grids. */
+const SIDES = [5, 11, 21, 31, 100, 200, 316, 600, 1000];
+/** Repetitions where one run takes milliseconds; the median counts. */
+const REPEATED = 7, REPEAT_UP_TO = 1000;
+
+/**
+ * Runs the table.
+ *
+ * @param highsLimitMs limit of each run of HiGHS, in milliseconds; after two in a row that reach it,
+ *   larger sizes are run without it. The grids have no triangles, so edge rows are the clique rows.
+ * @param sides sides of the grids, all even or all with an odd side of their own
+ * @param onRow called with each line as it is ready
+ * @throws {Error} when an answer is not optimal, fails its check, or is beaten by HiGHS
+ */
+export async function projectiveBench(
+  highsLimitMs = 60_000,
+  sides: readonly number[] = SIDES,
+  onRow: (row: ProjectiveRow) => void = (row) => console.log(lineOf(row)),
+): Promise<ProjectiveRow[]> {
+  const rows: ProjectiveRow[] = [];
+  console.log(HEAD);
+  let timeouts = 0;
+  for (const side of sides) {
+    const graph = mirroredGrid(side, side);
+    const weights = hardWeights(graph, new Random(1));
+    const runs: Timed[] = [];
+    for (let i = graph.n <= REPEAT_UP_TO ? REPEATED : 1; i > 0; i--) {
+      runs.push(timed(graph, weights));
+    }
+    runs.sort((a, b) => a.kernel + a.engine + a.check - b.kernel - b.engine - b.check);
+    const run = runs[runs.length >> 1];
+    const beside = timeouts < 2 ? await highsOn(graph, weights, run.weight, highsLimitMs) : {};
+    timeouts = beside.highsSays === "optimal" ? 0 : timeouts + 1;
+    const row: ProjectiveRow = {
+      n: graph.n,
+      ...run,
+      ratio: (run.kernel + run.engine + run.check) / run.kernel,
+      ...beside,
+      peakMegabytes: process.resourceUsage().maxRSS / 1024,
+    };
+    rows.push(row);
+    onRow(row);
+  }
+  return rows;
+}
+
+type Timed = Pick<ProjectiveRow, "weight" | "kernel" | "engine" | "check" | "searches">;
+
+function timed(graph: Graph, weights: Float64Array): Timed {
+  const started = performance.now();
+  const { value, doubledCosts } = halfIntegralKernel(graph, weights, new Meter());
+  const kernel = performance.now() - started;
+  if (value.some((x) => x !== 1)) throw new Error("expected the whole grid in the kernel");
+  const labels = Int32Array.from({ length: graph.n }, (_, v) => v);
+  const answer = solveProjective({ graph, weights, labels, doubledCosts }, new Meter());
+  const engine = performance.now() - started - kernel;
+  if (answer.status !== "optimal") throw new Error(`expected optimal, got ${answer.status}`);
+  const play = {
+    n: graph.n,
+    ...neighbourLists(graph.n, graph.tails, graph.heads),
+    weights,
+    vertices: labels,
+    nameOf: (v: number) => `${v}`,
+    scratch: scratchFor(graph.n),
+  };
+  const bound = projectiveBound(play, answer.proof as ProjectiveProof);
+  if (bound !== BigInt(answer.weight) || !isStable(graph, answer.chosen)) {
+    throw new Error(`proved ${bound}, reached ${answer.weight}`);
+  }
+  const check = performance.now() - started - kernel - engine;
+  return {
+    weight: answer.weight,
+    kernel,
+    engine,
+    check,
+    searches: Number(answer.figures.searches),
+  };
+}
+
+/** HiGHS with edge rows, and whether its point, rounded and weighed here, is as good. */
+async function highsOn(
+  graph: Graph,
+  weights: Float64Array,
+  optimum: number,
+  timeLimitMs: number,
+): Promise<Pick<ProjectiveRow, "highs" | "highsSays">> {
+  const model = stableSetModel(
+    weights,
+    Array.from(graph.tails, (u, e) => [u, graph.heads[e]]),
+    true,
+  );
+  const started = performance.now();
+  const outcome = await runHighs(model, { absoluteGap: 0.5, timeLimitMs });
+  const highs = performance.now() - started;
+  if (outcome.x === undefined) return { highs, highsSays: `${outcome.status}, no point` };
+  const point = Uint8Array.from(outcome.x, (x) => x > 0.5 ? 1 : 0);
+  const theirs = isStable(graph, point) ? weightOf(weights, point) : NaN;
+  if (theirs > optimum) throw new Error(`HiGHS found ${theirs}, above ${optimum}`);
+  if (outcome.status === "optimal" && theirs === optimum) return { highs, highsSays: "optimal" };
+  return {
+    highs,
+    highsSays: `${outcome.status === "optimal" ? "wrongly optimal" : "stopped"} at ${theirs}`,
+  };
+}
+
+const HEAD = "        n    kernel    engine     check  ratio  searches" +
+  "     HiGHS  HiGHS/(kernel+engine)   peak MB  weight (HiGHS)";
+
+/** One line of the table as text. */
+function lineOf(row: ProjectiveRow): string {
+  const ms = (value: number | undefined, width: number) =>
+    (value === undefined
+      ? "-"
+      : value < 100
+      ? `${value.toFixed(1)} ms`
+      : `${(value / 1000).toFixed(2)} s`).padStart(width);
+  const factor = row.highs === undefined
+    ? "-"
+    : `${row.highsSays === "optimal" ? "" : ">"}${
+      Math.round(row.highs / (row.kernel + row.engine)).toLocaleString("en")
+    }`;
+  return [
+    row.n.toLocaleString("en").padStart(9),
+    ms(row.kernel, 9),
+    ms(row.engine, 9),
+    ms(row.check, 9),
+    row.ratio.toFixed(2).padStart(6),
+    String(row.searches).padStart(9),
+    ms(row.highs, 9),
+    factor.padStart(22),
+    row.peakMegabytes.toFixed(0).padStart(9),
+    ` ${row.weight}${row.highsSays === undefined ? "" : ` (${row.highsSays})`}`,
+  ].join(" ");
+}
