@@ -33,7 +33,7 @@ td { border-bottom: 1px solid var(--line); }
 nav { margin: 1rem 0 0; font-size: .92rem; } nav ul { display: flex; flex-wrap: wrap;
   gap: .2rem 1.1rem; list-style: none; margin: 0; padding: 0; }
 a { color: inherit; }
-td { white-space: nowrap; } td.long { white-space: normal; } td td, td div { white-space: normal; }
+.own td { white-space: nowrap; } .own td.long { white-space: normal; }
 th.right { white-space: normal; vertical-align: bottom; } th { vertical-align: bottom; }
 .long { min-width: 15rem; }
 code, pre { font-family: ui-monospace, Menlo, Consolas, monospace; font-size: .88rem; }
@@ -42,12 +42,12 @@ pre { background: var(--soft); border-radius: .5rem; padding: .7rem .9rem; overf
 figure { margin: .8rem 0; } figure svg, img { max-width: 100%; height: auto; }
 figcaption { color: var(--faint); font-size: .92rem; max-width: 44rem; }
 footer { margin-top: 3rem; color: var(--faint); font-size: .9rem; }
-@media (max-width: 34rem) { body { padding: 1rem .9rem 3rem; } .headline { max-width: none; font-size: 1.35rem; }
+@media (max-width: 34rem) { .long { min-width: 11.5rem; } body { padding: 1rem .9rem 3rem; } .headline { max-width: none; font-size: 1.35rem; }
   dl.figures { grid-template-columns: 1fr 1fr; } }
 @media print { :root { --ink: #000; --faint: #444; --line: #bbb; --ground: #fff; --soft: #f2f2f2;
   --good: #0d5c3b; --warn: #9a3412; }
   body { max-width: none; padding: 0; font-size: 10pt; } .scroll { overflow: visible; }
   h2, h3 { break-after: avoid; } tr, figure, dl.figures div { break-inside: avoid; }
   thead { display: table-header-group; } pre { white-space: pre-wrap; }
-  nav { display: none; } a { color: inherit; text-decoration: none; } @page { margin: 18mm 16mm; } }
+  th, td { padding-top: .15rem; padding-bottom: .15rem; } nav { display: none; } a { color: inherit; text-decoration: none; } @page { margin: 18mm 16mm; } }
 `.trim();

@@ -20,6 +20,6 @@ export function reportTable(table: Table): string {
     ? ""
     : `<caption>${escapeHtml(table.caption)}</caption>`;
   const label = escapeHtml(table.caption ?? "table");
-  return `<div class="scroll" role="region" aria-label="${label}" tabindex="0"><table>${caption}` +
+  return `<div class="scroll" role="region" aria-label="${label}" tabindex="0"><table class="own">${caption}` +
     `<thead><tr>${head}</tr></thead>\n<tbody>\n${body}</tbody></table></div>\n`;
 }

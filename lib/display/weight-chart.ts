@@ -153,7 +153,7 @@ export function drawChart(chart: WeightChart): string {
   const tallest = bars.reduce((most, bar) => Math.max(most, bar.chosen + bar.refused), 1);
   const wide = (WIDTH - LEFT - 20) / Math.max(1, bars.length);
   const high = (BASE - TOP) / tallest;
-  const step = Math.max(1, roundStep(tallest / 4));
+  const step = Math.max(1, roundStep(tallest / 6));
   canvas.group({ stroke: PALETTE.line, "stroke-width": 0.6 });
   for (let tick = 0; tick <= tallest; tick += step) {
     canvas.add("line", {

@@ -110,6 +110,28 @@ describe("drawDisc", () => {
   });
 });
 
+describe("the curve across strong edges", () => {
+  it("runs from rim to rim through the faces of a cut", () => {
+    // Two rows of the grid: the edges between them are crossed by one closed curve.
+    const graph = mirroredGrid(5, 7);
+    const between = Uint8Array.from(
+      graph.tails,
+      (u, e) => Math.floor(u / 7) === 1 && Math.floor(graph.heads[e] / 7) === 2 ? 1 : 0,
+    );
+    const svg = drawDisc({
+      embedding: embedded(graph),
+      labels: Array.from({ length: graph.n }, () => ""),
+      styles: [{ fill: "#111111", name: "all" }],
+      styleOf: new Uint8Array(graph.n),
+      strong: between,
+    }, "a cut");
+    const curve = /stroke-opacity="0.25"[^>]*>((?:<line [^>]*>)*)/.exec(svg)?.[1] ?? "";
+    // Six squares between seven edges, and the outer face: each of them is in the disc once.
+    const pieces = curve.match(/<line /g)?.length ?? 0;
+    expect(pieces).toBe(7);
+  });
+});
+
 describe("drawEmbedding", () => {
   const gridInstance = (rows: number, columns: number) => {
     const graph = mirroredGrid(rows, columns);

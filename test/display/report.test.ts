@@ -8,6 +8,7 @@ import { Picture } from "../../lib/display/picture.ts";
 import { registerRenderers } from "../../lib/display/register.ts";
 import { report } from "../../lib/display/report.ts";
 import { saveReport } from "../../lib/display/save-report.ts";
+import { Classification } from "../../lib/reduce/classify.ts";
 import { markupProblem } from "../support/markup.ts";
 import { EVIL, smallMarket } from "../support/quay.ts";
 import { firstFit } from "../support/solutions.ts";
@@ -114,6 +115,19 @@ describe("report", () => {
     const a = await report([instance, solution]), b = await report([instance, again]);
     expect(a === b).toBe(false);
     expect(cut(a)).toBe(cut(b));
+  });
+
+  it("leaves out the time that further results took", async () => {
+    const took = (elapsedMs: number) =>
+      new Classification({
+        instance: { name: "m", items: 0, conflicts: 0, fingerprint: "f".repeat(64) },
+        components: [],
+        elapsedMs,
+      });
+    const options = { timing: false };
+    const page = await report([solution, took(12)], options);
+    expect(page).toContain("largest first");
+    expect(page).toBe(await report([solution, took(3456)], options));
   });
 
   it("shows options, but not callbacks and signals", async () => {
