@@ -1,4 +1,5 @@
 /** What the engines do, in words for somebody who does not know them. */
+import { numberText } from "./text.ts";
 
 const WORDS: Readonly<Record<string, string>> = {
   relaxation: "settled by the half-integral relaxation (one maximum flow)",
@@ -15,7 +16,10 @@ export function engineWords(engine: string): string {
   return WORDS[engine] ?? engine;
 }
 
-/** The figures of a part as a phrase, such as "transversal 5, cases 32". */
+/** The figures of a part as a phrase: `{ verticesLeft: 1277 }` gives "vertices left 1,277". */
 export function figuresText(figures: Readonly<Record<string, number | string>>): string {
-  return Object.entries(figures).map(([name, value]) => `${name} ${value}`).join(", ");
+  return Object.entries(figures).map(([name, value]) => {
+    const words = name.replace(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`);
+    return `${words} ${typeof value === "number" ? numberText(value) : value}`;
+  }).join(", ");
 }

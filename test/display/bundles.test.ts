@@ -72,6 +72,13 @@ describe("a solution", () => {
     ) expect(html).toContain(phrase);
   });
 
+  it("tells the figures of an engine in words", async () => {
+    const [part] = firstFit(instance).parts;
+    const parts = [{ ...part, engine: "new", figures: { verticesLeft: 1277, mode: "dense" } }];
+    expect((await bundle(firstFit(instance, { parts }))).text)
+      .toContain("new (vertices left 1,277, mode dense)");
+  });
+
   it("adds many parts solved alike up in one row", async () => {
     const [part] = firstFit(instance).parts;
     const parts = Array.from(
