@@ -23,6 +23,7 @@ import { balance } from "./balance.ts";
 import { evenFaceEmbedding } from "./even-face.ts";
 import type { EvenFaceEmbedding } from "./even-face-result.ts";
 import { linked } from "./linkage.ts";
+import { glimpseOddCyclePair, LOOK_SCANS } from "./odd-cycle-glimpse.ts";
 import { allOdd, type OddKernel, oddKernel } from "./odd-kernel.ts";
 import { withoutSides } from "./replace-sides.ts";
 import { transversalWithin } from "./transversal.ts";
@@ -40,16 +41,27 @@ export interface TwoDisjoint {
   readonly embedded?: { readonly graph: Graph; readonly embedding: EvenFaceEmbedding };
 }
 
+/** What the decision may be told. */
+export interface TwoDisjointOptions {
+  /** Whether to look for two such cycles before the theorem is called upon (default true). */
+  readonly look?: boolean;
+}
+
 /**
  * Decides whether two odd cycles without a common vertex exist.
  *
  * @param graph any graph, all edges odd
  * @param meter counts about one unit for each arc scanned
+ * @param options whether to look for two before anything is proved
  * @returns the answer; undecided only where graph/separations.ts ends at its own limit of work,
  *   which no graph met so far has reached
  * @throws {Interrupted} when the meter runs out
  */
-export function twoDisjointOddCycles(graph: Graph, meter: Meter): TwoDisjoint {
+export function twoDisjointOddCycles(
+  graph: Graph,
+  meter: Meter,
+  options: TwoDisjointOptions = {},
+): TwoDisjoint {
   const kernel = oddKernel(graph, meter);
   const parts = componentSubgraphs(kernel.graph);
   const odd = parts.filter(({ graph, edges }) => {
@@ -65,7 +77,7 @@ export function twoDisjointOddCycles(graph: Graph, meter: Meter): TwoDisjoint {
       : "one item meets all odd cycles";
     return { exist: false, because };
   }
-  return inKernel(odd[0].graph, evenOf(kernel, odd[0].edges), meter);
+  return inKernel(odd[0].graph, evenOf(kernel, odd[0].edges), options.look ?? true, meter);
 }
 
 function evenOf(kernel: OddKernel, edges: Int32Array): Uint8Array {
@@ -73,11 +85,11 @@ function evenOf(kernel: OddKernel, edges: Int32Array): Uint8Array {
 }
 
 /** The same in a component of an odd kernel that has an odd cycle. */
-function inKernel(graph: Graph, even: Uint8Array, meter: Meter): TwoDisjoint {
+function inKernel(graph: Graph, even: Uint8Array, look: boolean, meter: Meter): TwoDisjoint {
   const { lower, best, cycles } = transversalWithin(graph, even, 3, meter);
-  if (cycles.length >= 2) return { exist: true, because: "two were found" };
+  if (look && cycles.length >= 2) return { exist: true, because: "two were found" };
   if (best.length === 1) return { exist: false, because: "one item meets all odd cycles" };
-  if (lower > 3) return beyondThree(graph, even, meter);
+  if (lower > 3) return beyondThree(graph, even, look, meter);
   const exist = throughTransversal(graph, even, best, meter);
   const because = `${best.length} items meet all odd cycles, and ` +
     `${exist ? "" : "no "}two disjoint paths join the colour classes of the rest in the right way`;
@@ -144,7 +156,12 @@ function throughTwo(
 }
 
 /** The question for graphs that need four vertices or more to be made bipartite. */
-function beyondThree(start: Graph, startEven: Uint8Array, meter: Meter): TwoDisjoint {
+function beyondThree(
+  start: Graph,
+  startEven: Uint8Array,
+  look: boolean,
+  meter: Meter,
+): TwoDisjoint {
   let graph = allOdd(start, startEven);
   for (let replaced = false;; replaced = true) {
     const embedding = evenFaceEmbedding(graph, meter, { witness: false });
@@ -153,6 +170,9 @@ function beyondThree(start: Graph, startEven: Uint8Array, meter: Meter): TwoDisj
         ? "it has an even-face embedding in the projective plane once its blocks are replaced"
         : "it has an even-face embedding in the projective plane";
       return { exist: false, because, embedded: { graph, embedding } };
+    }
+    if (look && !replaced && glimpseOddCyclePair(graph, meter, [], LOOK_SCANS / 10) !== undefined) {
+      return { exist: true, because: "two were found" };
     }
     const found = separations(graph, meter);
     if (found.twisted > 0) {
