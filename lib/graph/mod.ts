@@ -41,3 +41,4 @@ export {
 } from "./embedding.ts";
 export { type Planarity, planarity, planarRotation } from "./planarity.ts";
 export { type Kuratowski, kuratowskiProblem } from "./kuratowski.ts";
+export { CoverFlow } from "./cover-flow.ts";

@@ -17,7 +17,7 @@
  */
 import { componentSubgraphs } from "../graph/components.ts";
 import { type Graph, graphFromEdges } from "../graph/graph.ts";
-import { separations } from "../graph/separations.ts";
+import { type Separations, separations } from "../graph/separations.ts";
 import type { Meter } from "../run/meter.ts";
 import { balance } from "./balance.ts";
 import { evenFaceEmbedding } from "./even-face.ts";
@@ -53,8 +53,8 @@ export interface TwoDisjointOptions {
  * @param graph any graph, all edges odd
  * @param meter counts about one unit for each arc scanned
  * @param options whether to look for two before anything is proved
- * @returns the answer; undecided only where graph/separations.ts ends at its own limit of work,
- *   which no graph met so far has reached
+ * @returns the answer; undecided only where graph/separations.ts ends at its own limit of work again
+ *   and again without a step forward, which no graph met so far has done
  * @throws {Interrupted} when the meter runs out
  */
 export function twoDisjointOddCycles(
@@ -174,7 +174,7 @@ function beyondThree(
     if (look && !replaced && glimpseOddCyclePair(graph, meter, [], LOOK_SCANS / 10) !== undefined) {
       return { exist: true, because: "two were found" };
     }
-    const found = separations(graph, meter);
+    const found = allSides(graph, meter);
     if (found.twisted > 0) {
       return { exist: true, because: "three items leave two parts with odd cycles" };
     }
@@ -190,4 +190,16 @@ function beyondThree(
     exist: true,
     because: "four items or more meet all odd cycles, and there is no even-face embedding",
   };
+}
+
+/** The sides of a graph; where one search ends early, the next goes on from what it proved. */
+function allSides(graph: Graph, meter: Meter): Separations {
+  let found = separations(graph, meter);
+  for (let before = -1; !found.complete && found.sides.length === 0 && found.twisted === 0;) {
+    const proven = found.proven.reduce((sum, v) => sum + v, 0);
+    if (proven <= before) break;
+    before = proven;
+    found = separations(graph, meter, { known: found.proven });
+  }
+  return found;
 }
