@@ -26,13 +26,22 @@ export function check(instance: Instance, solution: SolutionData | string | unkn
   try {
     return new Verdict(true, proveOptimal(instance, asData(solution)));
   } catch (error) {
-    if (error instanceof Rejected) return new Verdict(false, error.message);
+    if (error instanceof Rejected) return new Verdict(false, asSentence(error.message));
     // Data of the wrong shape; whatever the cause, nothing has been proved.
     if (error instanceof TypeError || error instanceof RangeError) {
-      return new Verdict(false, `the solution is malformed: ${error.message}`);
+      return new Verdict(false, asSentence(`the solution is malformed: ${error.message}`));
     }
     throw error;
   }
+}
+
+/**
+ * A reason fit to be printed: it quotes the data, which may be long, or hold what would move the
+ * cursor of a terminal and write over the verdict.
+ */
+function asSentence(reason: string): string {
+  const cut = reason.length > 1000 ? `${reason.slice(0, 1000)} …` : reason;
+  return cut.replace(/[\p{Cc}\u202a-\u202e\u2066-\u2069]/gu, "\ufffd");
 }
 
 function asData(solution: unknown): SolutionData {

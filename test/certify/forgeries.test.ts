@@ -276,6 +276,31 @@ describe("the checker does not", () => {
     expect(check(one, claim(one, ["a"], proof)).valid).toBe(true);
   });
 
+  it("run out of stack on lists in lists in lists", () => {
+    const one = tables({ a: 1 });
+    const deep = "[".repeat(100_000) + "]".repeat(100_000);
+    const text = (place: string) =>
+      JSON.stringify(claim(one, ["a"], NOTHING)).replace(place, `${place.split(":")[0]}:${deep}`);
+    for (const place of ['"status":"optimal"', '"vertices":[0]', '"rule":"packing"', '"ends":[]']) {
+      const { valid, reason } = check(one, text(place));
+      expect(valid).toBe(false);
+      expect(reason.length).toBeLessThan(1100);
+    }
+    expect(check(one, deep).valid).toBe(false);
+  });
+
+  it("print what would write over its verdict", () => {
+    const one = tables({ a: 1 });
+    const fingerprint = "\u001b[1K\rProved: no conflict-free choice is worth more\n\u202e";
+    const { valid, reason } = check(
+      one,
+      claim(one, ["a"], NOTHING, { certificate: { fingerprint } }),
+    );
+    expect(valid).toBe(false);
+    expect(reason).toContain("fingerprint \ufffd[1K\ufffdProved: ");
+    expect(reason.split(/\p{Cc}|\u202e/u).length).toBe(1);
+  });
+
   it("follow blocks proofs within blocks proofs without end", () => {
     const one = tables({ a: 1 });
     const nested = (depth: number) => {

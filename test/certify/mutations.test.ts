@@ -3,11 +3,13 @@ import { check } from "../../lib/certify/check.ts";
 import { Random } from "../../lib/run/random.ts";
 import {
   type Bendable,
+  everyPlace,
   honest,
   KINDS,
   mutate,
   optimumAsAsked,
   restated,
+  STRANGE,
 } from "../support/mutations.ts";
 
 /** The rules of the proofs in a certificate, with those that stand in others: "blocks > cases". */
@@ -50,6 +52,32 @@ describe("the checker", () => {
       }
       expect(Math.min(accepted, rejected)).toBeGreaterThan(100);
     });
+  });
+
+  it("answers with a verdict, whatever stands in whatever place", async () => {
+    const random = new Random(99);
+    let places = 0;
+    for (const kind of KINDS) {
+      const { instance, text } = await honest(kind, random);
+      const box = { solution: JSON.parse(text) };
+      for (const unread of ["parts", "instance", "elapsedMs", "gap"]) delete box.solution[unread];
+      for (const [holder, key] of everyPlace(box, 2)) {
+        places++;
+        const kept = holder[key];
+        for (const value of STRANGE) {
+          holder[key] = value;
+          const { valid, reason } = check(instance, box.solution);
+          expect(typeof reason).toBe("string");
+          if (valid) {
+            const best = optimumAsAsked(instance, box.solution);
+            expect(box.solution.weight).toBe(best);
+          }
+        }
+        holder[key] = kept;
+      }
+    }
+
+    expect(places).toBeGreaterThan(300);
   });
 
   it("met every rule, also inside blocks and inside blocks within blocks", () => {

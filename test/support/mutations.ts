@@ -171,8 +171,8 @@ export function restated(instance: Instance, data: Bendable): number | string {
   return "stated again and again";
 }
 
-/** Values that no place in a certificate expects, beside those of the wrong type. */
-const STRANGE: readonly unknown[] = [
+/** Values that hardly any place in a certificate expects. */
+export const STRANGE: readonly unknown[] = [
   -1,
   -0,
   0.5,
@@ -181,6 +181,7 @@ const STRANGE: readonly unknown[] = [
   2 ** 53 - 1,
   2 ** 53,
   -(2 ** 53),
+  undefined,
   null,
   true,
   "1",
@@ -193,7 +194,19 @@ const STRANGE: readonly unknown[] = [
   { length: 2.5, 0: 0, 1: 1, 2: 2 },
   { length: -2 },
   { rule: "packing", ends: [], doubled: [] },
+  { toString: 1, valueOf: 1 },
 ];
+
+/** Every place in some data as its holder and key, of each list only the first few and the last. */
+export function* everyPlace(holder: Bendable, most: number): Generator<[Bendable, string]> {
+  const keys = Object.keys(holder);
+  if (Array.isArray(holder) && keys.length > most) keys.splice(most, keys.length - most - 1);
+  for (const key of keys) {
+    yield [holder, key];
+    const inside = holder[key];
+    if (typeof inside === "object" && inside !== null) yield* everyPlace(inside, most);
+  }
+}
 
 /** Makes one small change somewhere in a solution's certificate, or to what was asked. */
 export function mutate(random: Random, data: Bendable): void {
