@@ -11,6 +11,7 @@
 import type { Meter } from "../run/meter.ts";
 import type { Graph } from "./graph.ts";
 
+/** The flow, its graph, and the log that takes changes back. All its fields are private. */
 export class CoverFlow {
   readonly #graph: Graph;
   readonly #meter: Meter;
@@ -44,6 +45,8 @@ export class CoverFlow {
   readonly #stops: Int32Array;
 
   /**
+   * Starts with no flow at all.
+   *
    * @param graph any graph; parallel edges do no harm
    * @param capacities length n, integers >= 0 with a sum below 2^53
    */

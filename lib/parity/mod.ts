@@ -27,3 +27,8 @@ export {
   type NoEvenFaceReason,
 } from "./even-face-result.ts";
 export { leastTransversal, type Transversal, type TransversalOptions } from "./transversal.ts";
+export {
+  type TwoDisjoint,
+  twoDisjointOddCycles,
+  type TwoDisjointOptions,
+} from "./disjoint-odd-cycles.ts";
