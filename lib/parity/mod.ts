@@ -32,3 +32,5 @@ export {
   twoDisjointOddCycles,
   type TwoDisjointOptions,
 } from "./disjoint-odd-cycles.ts";
+export { classifyGraph, type GraphClass, type GraphKind } from "./classify-graph.ts";
+export { type OddCyclePacking, oddCyclePacking } from "./odd-cycle-packing.ts";
