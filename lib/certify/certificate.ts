@@ -23,6 +23,7 @@
 /** A list of numbers: typed while it is computed, a plain array once read from JSON. */
 export type Numbers = readonly number[] | Int32Array | Float64Array;
 
+/** Proves that nothing better exists: parts whose bounds add up to the weight reached. */
 export interface Certificate {
   readonly kind: "certificate";
   readonly version: 1;
@@ -40,6 +41,7 @@ export interface Certificate {
   readonly parts: readonly CertificatePart[];
 }
 
+/** Some of the vertices, with a bound for what can be chosen among them. */
 export interface CertificatePart {
   readonly vertices: Numbers;
   /** What the proof proves for this part, in scaled units. */
@@ -47,6 +49,7 @@ export interface CertificatePart {
   readonly proof: Proof;
 }
 
+/** A proof, told apart by its `rule`. */
 export type Proof = PackingProof | CasesProof | BlocksProof | ProjectiveProof;
 
 /**

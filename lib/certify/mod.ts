@@ -14,12 +14,15 @@
  */
 export { check } from "./check.ts";
 export type {
+  BlockReplacement,
+  BlocksProof,
   CaseNode,
   CasesProof,
   Certificate,
   CertificatePart,
   Numbers,
   PackingProof,
+  ProjectiveProof,
   Proof,
 } from "./certificate.ts";
 export { fromJson, toJson } from "./json.ts";

@@ -60,7 +60,12 @@ export class Decomposition extends Displayable implements DecompositionData {
   readonly instance: DecompositionData["instance"];
   readonly #source: Instance;
 
-  /** @param source the instance decomposed; it is not part of the data */
+  /**
+   * Ties core and blocks to their instance.
+   *
+   * @param data plain data, as JSON holds it
+   * @param source the instance decomposed; it is not part of the data
+   */
   constructor(data: DecompositionData, source: Instance) {
     super();
     this.components = data.components;

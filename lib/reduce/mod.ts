@@ -14,11 +14,30 @@
  */
 export { type HalfIntegralKernel, halfIntegralKernel } from "./kernel.ts";
 export { liftBlocks, reduceBlocks, type Reduction } from "./blocks.ts";
-export { type KernelPiece, type ReducedPiece, reducePiece } from "./blocks-piece.ts";
+export type { CostGraph } from "./blocks-costs.ts";
+export type { ReplacedBlock, Replacing } from "./gadgets-apply.ts";
+export {
+  type CombinedAnswer,
+  type KernelPiece,
+  type PieceAnswer,
+  type ReducedPiece,
+  reducePiece,
+} from "./blocks-piece.ts";
 export { decompose } from "./decompose.ts";
-export { type DecomposedComponent, Decomposition, type ItemBlock } from "./decomposition.ts";
+export {
+  type DecomposedComponent,
+  Decomposition,
+  type DecompositionData,
+  type ItemBlock,
+} from "./decomposition.ts";
 export { replaceBlocks } from "./replace-blocks.ts";
-export { type GadgetInfo, type GadgetState, gadgetText, Replacement } from "./replacement.ts";
+export {
+  type GadgetInfo,
+  type GadgetState,
+  gadgetText,
+  Replacement,
+  type ReplacementData,
+} from "./replacement.ts";
 export {
   Classification,
   type ClassificationData,

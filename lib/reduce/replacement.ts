@@ -57,6 +57,12 @@ export class Replacement extends Displayable implements ReplacementData {
   readonly elapsedMs: number;
   readonly #lift: (solution: Solution) => Solution;
 
+  /**
+   * Ties a gadget instance to the way back.
+   *
+   * @param data plain data, as JSON holds it
+   * @param lift turns a solution of the gadget instance into one of the original
+   */
   constructor(data: ReplacementData, lift: (solution: Solution) => Solution) {
     super();
     this.instance = data.instance;

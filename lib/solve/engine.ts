@@ -47,6 +47,7 @@ export interface Declined {
 /** Engines by name, as `SolveOptions.engine` takes them. */
 export type EngineName = "bipartite" | "transversal" | "projective" | "branch" | "mip";
 
+/** A connected piece and a meter in; a solution with its proof, or a reason to decline, out. */
 export type Engine = (
   piece: Piece,
   meter: Meter,
