@@ -48,19 +48,27 @@ export function relaxationOf(graph: Graph, weights: Float64Array, meter: Meter):
     if (copies[i] !== RIGHT_ONLY) supply[i] = weights[v];
     if (copies[i] !== LEFT_ONLY) demand[i] = weights[v];
   }
+  let scans = 0;
   // Rows sorted by number: in ascending order every vertex enters itself in its neighbours' rows.
   const next = starts.slice(0, n);
   const ends = new Int32Array(2 * m);
   for (let i = 0; i < n; i++) {
     const v = order[i];
     for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) ends[next[rank[targets[a]]]++] = i;
+    scans += 1 + offsets[v + 1] - offsets[v];
+    if (scans >= BATCH) {
+      meter.tick(scans);
+      scans = 0;
+    }
   }
-  meter.tick(2 * m);
   // Read in the same order, the rows give the place of each arc in the row of its far end.
   const twin = new Int32Array(2 * m);
   next.set(starts.subarray(0, n));
-  for (let p = 0; p < 2 * m; p++) twin[p] = next[ends[p]]++;
-  meter.tick(2 * m);
+  for (let p = 0; p < 2 * m;) {
+    const end = Math.min(p + BATCH, 2 * m);
+    meter.tick(end - p);
+    for (; p < end; p++) twin[p] = next[ends[p]]++;
+  }
   const network = { n, offsets: starts, targets: ends, twin };
   return { network, state: { supply, demand, flow: new Float64Array(2 * m) }, order, copies };
 }
