@@ -10,7 +10,7 @@ import { loadHighs } from "../polytope/highs.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
 import { CaseTree, proofSize } from "./branch/case-tree.ts";
 import { coverSearch, type SearchResult } from "./branch/cover-search.ts";
-import { relaxationSearch } from "./branch/relaxation-search.ts";
+import { RelaxationSearch } from "./branch/relaxation-search.ts";
 import type { Piece, Solved } from "./engine.ts";
 import { greedyPacking } from "./greedy.ts";
 import { type Incumbent, localSearch } from "./incumbent.ts";
@@ -93,53 +93,52 @@ export async function branch(piece: Piece, meter: Meter, start?: Incumbent): Pro
   const turns = m <= SPARSE * n ? SPARSE_TURNS : DENSE_TURNS;
   let coverTurn = FIRST_COVER_TURN, nextCoverTurn = turns.cover, relaxationTurn = turns.relaxation;
   let coverOutgrown = !covers, relaxationOutgrown = !relaxations;
-  let cliques: number[][] | undefined;
-  for (let round = 0; !(coverOutgrown && relaxationOutgrown); round++) {
-    if (round > 0) {
-      const again = localSearch(graph, weights, meter, look * 2 ** round, best.chosen, round);
-      if (again.weight > best.weight) best = again;
+  const relaxationTree = new CaseTree();
+  let relaxation: RelaxationSearch | undefined;
+  let last = "none, the piece is too large";
+  try {
+    for (let round = 0; !(coverOutgrown && relaxationOutgrown); round++) {
+      if (round > 0) {
+        const again = localSearch(graph, weights, meter, look * 2 ** round, best.chosen, round);
+        if (again.weight > best.weight) best = again;
+      }
+      if (!coverOutgrown) {
+        last = "clique covers";
+        const tree = new CaseTree();
+        const turn = meter.within(relaxationOutgrown ? Infinity : coverTurn);
+        const result = coverSearch(graph, weights, best, tree, turn, MOST_NUMBERS);
+        take(result);
+        if (result.root !== undefined) return solved(last, result, tree);
+        if (meter.interruption !== undefined) break;
+        coverOutgrown = result.outgrown === true;
+        coverTurn = nextCoverTurn;
+        nextCoverTurn *= 4;
+      }
+      if (!relaxationOutgrown) {
+        last = "linear relaxations";
+        if (relaxation === undefined) {
+          const cliques = unlessInterrupted(() => edgeCliqueCover(graph, meter));
+          if (cliques === undefined) break;
+          const highs = await loadHighs();
+          relaxation = new RelaxationSearch(graph, weights, cliques, best, relaxationTree, highs);
+        }
+        relaxation.offer(best);
+        const turn = meter.within(coverOutgrown ? Infinity : relaxationTurn);
+        const result = relaxation.turn(turn, MOST_NUMBERS);
+        take(result);
+        if (result.root !== undefined) return solved(last, result, relaxationTree);
+        if (meter.interruption !== undefined) break;
+        relaxationOutgrown = result.outgrown === true;
+        relaxationTurn *= 4;
+      }
+      await meter.breathe();
+      if (meter.interruption !== undefined) break;
     }
-    if (!coverOutgrown) {
-      const tree = new CaseTree();
-      const turn = meter.within(relaxationOutgrown ? Infinity : coverTurn);
-      const result = coverSearch(graph, weights, best, tree, turn, MOST_NUMBERS);
-      take(result);
-      if (result.root !== undefined) return solved("clique covers", result, tree);
-      if (meter.interruption !== undefined) return solved("clique covers");
-      coverOutgrown = result.outgrown === true;
-      coverTurn = nextCoverTurn;
-      nextCoverTurn *= 4;
-    }
-    if (!relaxationOutgrown) {
-      cliques ??= unlessInterrupted(() => edgeCliqueCover(graph, meter));
-      if (cliques === undefined) return solved("linear relaxations");
-      const highs = await loadHighs();
-      const tree = new CaseTree();
-      const turn = meter.within(coverOutgrown ? Infinity : relaxationTurn);
-      const result = relaxationSearch(
-        graph,
-        weights,
-        cliques,
-        best,
-        tree,
-        highs,
-        turn,
-        MOST_NUMBERS,
-      );
-      take(result);
-      if (result.root !== undefined) return solved("linear relaxations", result, tree);
-      if (meter.interruption !== undefined) return solved("linear relaxations");
-      relaxationOutgrown = result.outgrown === true;
-      relaxationTurn *= 4;
-    }
-    await meter.breathe();
-    if (meter.interruption !== undefined) break;
+  } finally {
+    relaxation?.dispose();
   }
-  return solved(
-    covers || relaxations
-      ? `given up when the proof had more than ${MOST_NUMBERS} numbers`
-      : "none, the piece is too large",
-  );
+  const outgrown = (covers || relaxations) && coverOutgrown && relaxationOutgrown;
+  return solved(outgrown ? `given up when the proof had more than ${MOST_NUMBERS} numbers` : last);
 
   function take(result: SearchResult): void {
     nodes += result.nodes;

@@ -8,7 +8,7 @@ import { Random } from "../../lib/run/random.ts";
 import { branch } from "../../lib/solve/branch.ts";
 import { CaseTree } from "../../lib/solve/branch/case-tree.ts";
 import { coverSearch } from "../../lib/solve/branch/cover-search.ts";
-import { relaxationSearch } from "../../lib/solve/branch/relaxation-search.ts";
+import { RelaxationSearch, relaxationSearch } from "../../lib/solve/branch/relaxation-search.ts";
 import type { Piece } from "../../lib/solve/engine.ts";
 import { bruteForce, isStable, weightOf } from "../oracle/brute-force.ts";
 import { leastDelayMs, PROMISED_MS } from "../support/effort.ts";
@@ -234,6 +234,32 @@ describe("branch and bound when it is stopped", () => {
       }
     }
     expect(open > 50).toBe(true);
+  });
+
+  it("relaxations go on from where they were stopped, however often", async () => {
+    const highs = await loadHighs();
+    const random = new Random(19);
+    let turns = 0;
+    for (let round = 0; round < 60; round++) {
+      const n = 16 + random.below(9);
+      const graph = randomGraph(random, n, 0.1 + random.unit() / 2);
+      const weights = randomWeights(random, n, 1, HEAVIEST[round % 4]);
+      const best = bruteForce(graph, weights);
+      const tree = new CaseTree();
+      const cliques = edgeCliqueCover(graph);
+      const search = new RelaxationSearch(graph, weights, cliques, nothing(n), tree, highs);
+      let result = search.turn(new Meter().within(10_000));
+      for (let budget = 10_000; result.root === undefined; budget *= 1.1) {
+        expect(result.weight <= best.weight && result.upperBound >= best.weight).toBe(true);
+        if (turns++ % 3 === 0) search.offer(best);
+        result = search.turn(new Meter().within(Math.floor(budget)));
+      }
+      search.dispose();
+      expect(result.weight).toBe(best.weight);
+      const proof = tree.toProof(result.root, result.denominator, identity(n));
+      expect(checkedBound(graph, weights, identity(n), proof)).toBe(best.weight);
+    }
+    expect(turns > 100).toBe(true);
   });
 
   it("ends within 200 ms of a time limit, with a bound better than half the weight", async () => {

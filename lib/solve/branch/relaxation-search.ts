@@ -54,26 +54,11 @@ export function relaxationSearch(
   mostNumbers = Infinity,
 ): SearchResult {
   const search = new RelaxationSearch(graph, weights, cliques, start, tree, highs);
-  let open = -Infinity;
-  let complete = true;
   try {
-    search.run(meter, mostNumbers);
-  } catch (error) {
-    if (!(error instanceof Interrupted)) throw error;
-    open = search.openBound();
-    complete = false;
+    return search.turn(meter, mostNumbers);
   } finally {
     search.dispose();
   }
-  return {
-    chosen: search.bestChosen,
-    weight: search.bestWeight,
-    upperBound: Math.max(search.bestWeight, open),
-    root: complete ? search.root : undefined,
-    denominator: search.denominator,
-    nodes: search.nodes,
-    outgrown: search.outgrown,
-  };
 }
 
 /** A solved node: the relaxed point, and what its rounded multipliers prove. */
@@ -95,14 +80,17 @@ interface Frame {
 
 const FREE = 0, CHOSEN = 1, OUT = 2;
 
-class RelaxationSearch {
-  readonly bestChosen: Uint8Array;
-  bestWeight: number;
-  readonly root: Case = {};
-  readonly denominator: number;
-  nodes = 0;
-  outgrown = false;
+/** The search as an object that can be stopped and taken up again; arguments as above. */
+export class RelaxationSearch {
+  #bestChosen: Uint8Array;
+  #bestWeight: number;
+  readonly #root: Case = {};
+  readonly #denominator: number;
+  #nodes = 0;
   #numbers = 0;
+  /** The case being worked on, and the length of the trail where it begins. */
+  #at: Case | undefined = this.#root;
+  #atTrail = 0;
   readonly #graph: Graph;
   readonly #weights: Float64Array;
   readonly #relaxation: Relaxation;
@@ -131,11 +119,11 @@ class RelaxationSearch {
     const { n } = graph;
     this.#graph = graph;
     this.#weights = weights;
-    this.bestChosen = start.chosen.slice();
-    this.bestWeight = start.weight;
+    this.#bestChosen = start.chosen.slice();
+    this.#bestWeight = start.weight;
     let heaviest = 1;
     for (let v = 0; v < n; v++) heaviest = Math.max(heaviest, weights[v]);
-    this.denominator = denominatorFor(heaviest);
+    this.#denominator = denominatorFor(heaviest);
     let scale = 1;
     while (heaviest / scale > 4096) scale *= 2;
     this.#scale = scale;
@@ -151,93 +139,130 @@ class RelaxationSearch {
     this.#costs = new PseudoCosts(n);
   }
 
+  /** Frees what HiGHS holds. */
   dispose(): void {
     this.#relaxation.dispose();
   }
 
+  /** A better stable set, found elsewhere. */
+  offer(incumbent: { chosen: Uint8Array; weight: number }): void {
+    if (incumbent.weight <= this.#bestWeight) return;
+    this.#bestChosen = incumbent.chosen.slice();
+    this.#bestWeight = incumbent.weight;
+  }
+
+  /**
+   * Goes on from where the last turn ended.
+   *
+   * @param meter an interruption ends the turn; it is not passed on
+   * @param mostNumbers ends the search, with `outgrown` set, when the proof holds more numbers
+   * @returns where the search stands; `root` only when it is complete
+   */
+  turn(meter: Meter, mostNumbers = Infinity): SearchResult {
+    const nodesBefore = this.#nodes;
+    let complete = true, outgrown = false;
+    try {
+      outgrown = !this.#run(meter, mostNumbers);
+      complete = !outgrown;
+    } catch (error) {
+      if (!(error instanceof Interrupted)) throw error;
+      complete = false;
+    }
+    return {
+      chosen: this.#bestChosen.slice(),
+      weight: this.#bestWeight,
+      upperBound: complete ? this.#bestWeight : Math.max(this.#bestWeight, this.#openBound()),
+      root: complete ? this.#root : undefined,
+      denominator: this.#denominator,
+      nodes: this.#nodes - nodesBefore,
+      outgrown,
+    };
+  }
+
   /** A bound for all cases not closed; before the root is solved, Infinity. */
-  openBound(): number {
+  #openBound(): number {
     let bound = this.#currentBound;
     for (const frame of this.#frames) bound = Math.max(bound, frame.bound);
     return bound;
   }
 
-  run(meter: Meter, mostNumbers: number): void {
-    let node: Case | undefined = this.root;
-    let isRoot = true;
-    while (node !== undefined) {
-      this.nodes++;
-      if (this.#numbers > mostNumbers) {
-        this.outgrown = true;
-        throw new Interrupted("work");
-      }
-      const result = this.#close(meter, node, isRoot);
-      isRoot = false;
-      if (result !== undefined) {
-        const { at, vertex, evaluation } = result;
-        at.on = vertex;
-        at.chosen = {};
-        at.left = {};
-        const { bound } = evaluation;
-        this.#frames.push({ node: at, trail: this.#trail.length, bound });
+  /** @returns false when the proof has outgrown its limit */
+  #run(meter: Meter, mostNumbers: number): boolean {
+    this.#undo(this.#atTrail);
+    while (this.#at !== undefined) {
+      if (this.#numbers > mostNumbers) return false;
+      this.#nodes++;
+      const branching = this.#close(meter);
+      if (branching !== undefined) {
+        const { vertex, bound } = branching;
+        const node = this.#at;
+        node.on = vertex;
+        node.chosen = {};
+        node.left = {};
+        this.#frames.push({ node, trail: this.#trail.length, bound });
         this.#currentBound = bound;
         this.#choose(vertex);
-        node = at.chosen;
+        this.#goOnIn(node.chosen);
         continue;
       }
       const frame = this.#frames.pop();
-      if (frame === undefined) return;
+      if (frame === undefined) {
+        this.#at = undefined;
+        return true;
+      }
       this.#undo(frame.trail);
       this.#leave(frame.node.on as number);
       this.#currentBound = frame.bound;
-      node = frame.node.left as Case;
+      this.#goOnIn(frame.node.left as Case);
       meter.report("cases", {
-        done: this.nodes,
-        lower: this.bestWeight,
-        upper: Math.max(this.bestWeight, this.openBound()),
+        done: this.#nodes,
+        lower: this.#bestWeight,
+        upper: Math.max(this.#bestWeight, this.#openBound()),
       });
     }
+    return true;
+  }
+
+  #goOnIn(node: Case): void {
+    this.#at = node;
+    this.#atTrail = this.#trail.length;
   }
 
   /**
-   * Closes a node, perhaps by way of one-sided branchings written below it, or returns where and on
-   * what to branch.
+   * Closes the current case, perhaps by way of one-sided branchings written below it, or returns what
+   * to branch on in the case that is current then.
    */
-  #close(
-    meter: Meter,
-    node: Case,
-    isRoot: boolean,
-  ): { at: Case; vertex: number; evaluation: Evaluation } | undefined {
-    let at = node;
+  #close(meter: Meter): { vertex: number; bound: number } | undefined {
     for (;;) {
-      const evaluation = this.#tightened(meter, isRoot);
-      at.terms = evaluation.terms;
+      const node = this.#at as Case;
+      const evaluation = this.#tightened(meter, node === this.#root);
+      node.terms = evaluation.terms;
       this.#numbers += evaluation.terms.length;
-      if (evaluation.bound > this.bestWeight && !this.#state.includes(FREE)) this.#takeState();
-      if (evaluation.bound <= this.bestWeight) return undefined;
-      this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
-      const vertex = this.#pick(meter, evaluation);
-      if (typeof vertex === "number") return { at, vertex, evaluation };
+      if (evaluation.bound > this.#bestWeight && !this.#state.includes(FREE)) this.#takeState();
+      if (evaluation.bound <= this.#bestWeight) return undefined;
+      const pick = this.#pick(meter, evaluation);
+      if (typeof pick === "number") return { vertex: pick, bound: evaluation.bound };
       // One case is closed already: write it, go on in the other.
-      at.on = vertex.on;
-      const closed: Case = { terms: vertex.terms };
+      node.on = pick.on;
+      const closed: Case = { terms: pick.terms };
       const open: Case = {};
-      [at.chosen, at.left] = vertex.closed === CHOSEN ? [closed, open] : [open, closed];
-      if (vertex.closed === CHOSEN) this.#leave(vertex.on);
-      else this.#choose(vertex.on);
-      at = open;
+      [node.chosen, node.left] = pick.closed === CHOSEN ? [closed, open] : [open, closed];
+      if (pick.closed === CHOSEN) this.#leave(pick.on);
+      else this.#choose(pick.on);
+      this.#goOnIn(open);
     }
   }
 
   /** Solves the current node and adds violated rows while that helps. */
   #tightened(meter: Meter, isRoot: boolean): Evaluation {
     let evaluation = this.#evaluate(meter);
+    this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
     const rounds = isRoot ? ROOT_ROUNDS : NODE_ROUNDS;
     for (let round = 0; round < rounds; round++) {
-      if (evaluation.bound <= this.bestWeight || evaluation.point === undefined) break;
+      if (evaluation.bound <= this.#bestWeight || evaluation.point === undefined) break;
       const { x, value } = evaluation.point;
       if (this.#takeIfIntegral(x)) {
-        if (evaluation.bound <= this.bestWeight) break;
+        if (evaluation.bound <= this.#bestWeight) break;
       }
       const cliques = violatedCliques(this.#graph, x, ROWS_PER_ROUND, meter);
       const cycles = cliques.length >= ROWS_PER_ROUND / 2
@@ -249,13 +274,13 @@ class RelaxationSearch {
       this.#relaxation.add(this.#rows.asRows(first));
       evaluation = this.#evaluate(meter);
       this.#dropIdleRows(IDLE_SOLVES);
+      this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
       if (evaluation.point !== undefined) {
-        this.#currentBound = Math.min(this.#currentBound, evaluation.bound);
         if (value - evaluation.point.value < 1e-4 * Math.max(1, Math.abs(value)) && !isRoot) break;
         if (value - evaluation.point.value < 1e-5 * Math.max(1, Math.abs(value))) break;
       }
     }
-    if (evaluation.bound > this.bestWeight) this.#dropIdleRows(isRoot ? 0 : IDLE_SOLVES);
+    if (evaluation.bound > this.#bestWeight) this.#dropIdleRows(isRoot ? 0 : IDLE_SOLVES);
     return evaluation;
   }
 
@@ -273,7 +298,7 @@ class RelaxationSearch {
     }
     this.#relaxation.setBounds(this.#lower, this.#upper);
     const point = this.#relaxation.solve(meter);
-    const D = this.denominator, load = this.#load, sum = new FractionSum(D);
+    const D = this.#denominator, load = this.#load, sum = new FractionSum(D);
     const terms: number[] = [];
     load.fill(0);
     const rows = this.#rows;
@@ -329,11 +354,11 @@ class RelaxationSearch {
         this.#choose(v);
         const chosen = this.#evaluate(meter);
         this.#undo(trail);
-        if (chosen.bound <= this.bestWeight) return { on: v, closed: CHOSEN, terms: chosen.terms };
+        if (chosen.bound <= this.#bestWeight) return { on: v, closed: CHOSEN, terms: chosen.terms };
         this.#leave(v);
         const left = this.#evaluate(meter);
         this.#undo(trail);
-        if (left.bound <= this.bestWeight) return { on: v, closed: OUT, terms: left.terms };
+        if (left.bound <= this.#bestWeight) return { on: v, closed: OUT, terms: left.terms };
         const losses = [chosen, left].map((e) =>
           Math.max(0, point.value - (e.point?.value ?? point.value))
         );
@@ -357,21 +382,21 @@ class RelaxationSearch {
       if (x[v] > 1e-6 && x[v] < 1 - 1e-6) return false;
       if (x[v] >= 0.5) weight += this.#weights[v];
     }
-    if (weight <= this.bestWeight) return true;
+    if (weight <= this.#bestWeight) return true;
     for (let v = 0; v < n; v++) {
       if (x[v] < 0.5) continue;
       for (let a = offsets[v]; a < offsets[v + 1]; a++) if (x[targets[a]] >= 0.5) return false;
     }
-    this.bestWeight = weight;
-    for (let v = 0; v < n; v++) this.bestChosen[v] = x[v] >= 0.5 ? 1 : 0;
+    this.#bestWeight = weight;
+    for (let v = 0; v < n; v++) this.#bestChosen[v] = x[v] >= 0.5 ? 1 : 0;
     return true;
   }
 
   /** Nothing is free: what is chosen is a stable set, and better than the best. */
   #takeState(): void {
-    this.bestWeight = this.#chosenWeight;
+    this.#bestWeight = this.#chosenWeight;
     for (let v = 0; v < this.#state.length; v++) {
-      this.bestChosen[v] = this.#state[v] === CHOSEN ? 1 : 0;
+      this.#bestChosen[v] = this.#state[v] === CHOSEN ? 1 : 0;
     }
   }
 
