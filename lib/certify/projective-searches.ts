@@ -3,12 +3,13 @@
  * tree; each works on the potential its parent left, and what it changes is undone for its siblings.
  *
  * A potential a has a(x) <= c(x→y) + a(y) on every arc, so d(x, z) >= a(x) - a(z). The first is 0.
- * Dijkstra's method from s on the reduced costs c(x→y) + a(y) - a(x) >= 0 gives reduced distances
- * r(x). Raising a(x) by max(0, limit - r(x)) everywhere keeps it a potential, since r(y) is at most
- * r(x) plus the reduced cost of x→y; faces at the limit or beyond need not be looked at. This is a
- * search forward, at even depth. At odd depth a search goes backward, against the arcs, and lowers
- * a(x) likewise. Swapping the sheets keeps arcs and costs, so d(x, x̄) = d(x̄, x), and every potential
- * proves d(x, x̄) >= |a(x) - a(x̄)|.
+ * For a face s write r(x) = d(s, x) + a(x) - a(s) >= 0, the distance in the *reduced* costs
+ * c(x→y) + a(y) - a(x) >= 0. Raising a(x) by max(0, limit - r(x)) everywhere keeps it a potential,
+ * since r(y) is at most r(x) plus the reduced cost of x→y. Faces beyond the limit do not matter, nor
+ * do they lie on shortest paths to others within it, as r does not fall along a path; so Dijkstra's
+ * method may leave them out. This is a search forward, at even depth. At odd depth a search goes
+ * backward, against the arcs, and lowers a(x) likewise. Swapping the sheets keeps arcs and costs, so
+ * d(x, x̄) = d(x̄, x), and every potential proves d(x, x̄) >= |a(x) - a(x̄)|.
  */
 import { BucketQueue, HeapQueue, type MonotoneQueue } from "../graph/heap.ts";
 import type { Numbers, ProjectiveProof } from "./certificate.ts";
@@ -19,7 +20,7 @@ import { Rejected } from "./rejected.ts";
 /** Deeper trees are refused; sums of so many limits below 2^46 are exact. */
 const MOST_DEPTH = 64;
 const MOST_LIMIT = 2 ** 46;
-/** Where the largest reduced cost is at most this, buckets are used. */
+/** Where no cost is larger than this, buckets are used. */
 const MOST_BUCKETS = 1 << 16;
 
 /**
@@ -27,8 +28,6 @@ const MOST_BUCKETS = 1 << 16;
  *
  * @param dual the sphere
  * @param sources one face for each source
- * @param span the largest cost of going once around a vertex; no reduced cost is larger, since
- *   p(y) - p(x) is at most the cost of the way from y to x that completes the arc to such a circle
  * @param proof `starts`, `depths` and `limits` are read
  * @returns as long as `sources`: a lower bound for each
  * @throws {Rejected} when the tree is malformed
@@ -36,7 +35,6 @@ const MOST_BUCKETS = 1 << 16;
 export function provenDistances(
   dual: SphereDual,
   sources: Int32Array,
-  span: number,
   proof: ProjectiveProof,
 ): Float64Array {
   const { starts, depths, limits } = proof;
@@ -44,7 +42,7 @@ export function provenDistances(
     throw new Rejected("projective: expected as many depths and limits as starts");
   }
   const proven = new Float64Array(sources.length);
-  const sphere = new Searches(dual, span, largestSum(depths, limits) + span);
+  const sphere = new Searches(dual, largestSum(depths, limits));
   for (let i = 0; i < starts.length; i++) {
     const where = `projective, search ${i}`;
     const start = starts[i];
@@ -69,7 +67,7 @@ export function provenDistances(
   return proven;
 }
 
-/** The largest sum of limits from a root down to a search; at least as large as any potential. */
+/** The largest sum of limits from a root down to a search; no potential is larger in size. */
 function largestSum(depths: Numbers, limits: Numbers): number {
   const above = new Float64Array(MOST_DEPTH + 1);
   let largest = 0;
@@ -83,8 +81,8 @@ function largestSum(depths: Numbers, limits: Numbers): number {
 
 class Searches {
   /**
-   * For face x the potential a(x) at 2x, and at 2x + 1 its reduced distance during a search,
-   * `#unreached` otherwise. In 32 bits where everything fits, for speed.
+   * For face x the potential a(x) at 2x, and at 2x + 1 its distance during a search, `#unreached`
+   * otherwise. In 32 bits where everything fits, for speed.
    */
   readonly #state: Int32Array | Float64Array;
   readonly #unreached: number;
@@ -94,16 +92,20 @@ class Searches {
   readonly #touched: Int32Array;
 
   /**
-   * @param span the largest reduced cost
-   * @param most the largest potential or reduced distance that can occur
+   * @param most no potential is larger in size
    */
-  constructor(readonly dual: SphereDual, span: number, most: number) {
-    const faces = 2 * dual.pairs, narrow = most < 2 ** 30;
+  constructor(readonly dual: SphereDual, most: number) {
+    // A distance within a limit is at most that limit and the difference of two potentials.
+    const faces = 2 * dual.pairs, narrow = 3 * most < 2 ** 31;
     this.#state = narrow ? new Int32Array(2 * faces) : new Float64Array(2 * faces);
     this.#unreached = narrow ? 2 ** 31 - 1 : Infinity;
     for (let x = 0; x < faces; x++) this.#state[2 * x + 1] = this.#unreached;
     this.#touched = new Int32Array(faces);
-    this.#queue = span <= MOST_BUCKETS ? new BucketQueue(span) : new HeapQueue();
+    let dearest = 0;
+    for (let a = 0; a < dual.out.costs.length; a++) {
+      if (dual.out.costs[a] > dearest) dearest = dual.out.costs[a];
+    }
+    this.#queue = dearest <= MOST_BUCKETS ? new BucketQueue(dearest) : new HeapQueue();
   }
 
   get depth(): number {
@@ -122,23 +124,26 @@ class Searches {
     const state = this.#state, queue = this.#queue, touched = this.#touched;
     const unreached = this.#unreached;
     const source = (state[2 * x] >= state[2 * (x ^ 1)]) === backward ? x ^ 1 : x;
+    const sign = backward ? -1 : 1;
+    // r(x) <= limit exactly if d(x) + sign·a(x) <= within.
+    const within = limit + sign * state[2 * source];
     let count = 1, settled = 0, last = 0;
     queue.clear();
     state[2 * source + 1] = 0;
     touched[0] = source;
     queue.push(0, source);
     for (let near = queue.pop(); near >= 0; near = queue.pop()) {
-      const r = queue.key;
-      if (state[2 * near + 1] !== r) continue;
-      if (r < last) throw new Error("internal: the queue is out of order");
-      last = r;
+      const d = queue.key;
+      if (state[2 * near + 1] !== d) continue;
+      if (d < last) throw new Error("internal: the queue is out of order");
+      last = d;
       settled++;
-      const flip = near & 1, at = state[2 * near], row = near >> 1;
+      const flip = near & 1, row = near >> 1, at = sign * state[2 * near];
       for (let arc = offsets[row]; arc < offsets[row + 1]; arc++) {
-        const far = ends[arc] ^ flip, rise = state[2 * far] - at;
-        const reached = r + costs[arc] + (backward ? -rise : rise);
-        if (reached < r) throw new Error(`internal: ${where}: not a potential`);
-        if (reached > limit || reached >= state[2 * far + 1]) continue;
+        const far = ends[arc] ^ flip, cost = costs[arc], there = sign * state[2 * far];
+        if (cost + there < at) throw new Error(`internal: ${where}: not a potential`);
+        const reached = d + cost;
+        if (reached >= state[2 * far + 1] || reached + there > within) continue;
         if (state[2 * far + 1] === unreached) touched[count++] = far;
         state[2 * far + 1] = reached;
         queue.push(reached, far);
@@ -149,9 +154,10 @@ class Searches {
     const faces = touched.slice(0, count);
     const former = state instanceof Int32Array ? new Int32Array(count) : new Float64Array(count);
     for (let i = 0; i < count; i++) {
-      const y = faces[i], raised = limit - state[2 * y + 1];
+      const y = faces[i];
       former[i] = state[2 * y];
-      state[2 * y] += backward ? -raised : raised;
+      // a(y) + sign·(limit - r(y)).
+      state[2 * y] = sign * (within - state[2 * y + 1]);
       state[2 * y + 1] = unreached;
     }
     this.#done.push({ faces, former });

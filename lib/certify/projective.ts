@@ -38,11 +38,11 @@ export function projectiveBound(play: Play, proof: ProjectiveProof): bigint {
   const inner = innerGraph(play);
   const unit = requireMultiplier(proof.unit, "projective, unit");
   if (unit < 1) throw new Rejected("projective, unit: expected an integer >= 1, got 0");
-  const { costs, span } = requireCosts(play, inner, proof, unit);
+  const costs = requireCosts(play, inner, proof, unit);
   const dual = sphereDual(inner, proof.rotation, costs);
   const sources = requireSources(proof, dual.left);
   requireMeetsOneSided(dual, sources);
-  const proven = provenDistances(dual, sources, span, proof);
+  const proven = provenDistances(dual, sources, proof);
 
   const distance = BigInt(requireMultiplier(proof.distance, "projective, distance"));
   let total = 0n, divisor = 0;
@@ -70,7 +70,7 @@ function requireCosts(
   inner: InnerGraph,
   proof: ProjectiveProof,
   unit: number,
-): { costs: Float64Array; span: number } {
+): Float64Array {
   const { vertices, offsets, targets } = inner;
   const m = targets.length / 2;
   if (proof.costs.length !== m) {
@@ -90,10 +90,8 @@ function requireCosts(
       e++;
     }
   }
-  let span = 0;
   for (let v = 0; v < vertices.length; v++) {
     const weight = play.weights[vertices[v]];
-    if (load[v] > span) span = load[v];
     // A rounded sum is not safe; a rounded product is 2^53 at least.
     const isDouble = 2 * weight <= Number.MAX_SAFE_INTEGER
       ? load[v] * unit === 2 * weight
@@ -105,7 +103,7 @@ function requireCosts(
       );
     }
   }
-  return { costs, span };
+  return costs;
 }
 
 /** The faces of the sources on the sphere. */

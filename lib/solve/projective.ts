@@ -59,7 +59,7 @@ export function solveEmbedded(
   const { unit, step, costs, around } = inUnits(graph, weights, doubledCosts);
   const dual = directedDual(graph, next, costs);
   const curve = sourceCurve(graph, dual, around, meter);
-  const cycle = leastOneSidedCycle(graph, dual, curve, around, step, meter);
+  const cycle = leastOneSidedCycle(dual, curve, step, meter);
   const chosen = stableSetOfCycle(graph, cycle.crossed);
 
   let total = 0, weight = 0;

@@ -8,7 +8,6 @@
  * a small part of the sphere. In practice the work grows little faster than the sphere; at worst it is
  * one Dijkstra search, O(m log m), for each source.
  */
-import type { Graph } from "../../graph/graph.ts";
 import { HeapQueue } from "../../graph/heap.ts";
 import { Interrupted, type Meter } from "../../run/meter.ts";
 import type { DirectedDual } from "./directed-dual.ts";
@@ -46,32 +45,26 @@ const REACH = 0.4;
 /**
  * Finds a least one-sided cycle.
  *
- * @param graph H
- * @param dual its directed dual
+ * @param dual the directed dual of H
  * @param curve sources that every one-sided cycle passes
- * @param around length n, what the dual arcs around each vertex cost together
  * @param step all costs of one-sided cycles are equal modulo this
  * @param meter counts about one unit for each arc scanned
  * @returns the cycle; when the meter runs out, the best one found and a bound
  * @throws {Interrupted} when the meter runs out before any cycle was found
  */
 export function leastOneSidedCycle(
-  graph: Graph,
   dual: DirectedDual,
   curve: SourceCurve,
-  around: Float64Array,
   step: number,
   meter: Meter,
 ): LeastCycle {
-  // Reduced costs are at most the cost of going around either end.
-  let span = 0;
-  for (let e = 0; e < graph.m; e++) {
-    const most = Math.min(around[graph.tails[e]], around[graph.heads[e]]);
-    if (most > span) span = most;
+  let dearest = 0;
+  for (let a = 0; a < dual.out.costs.length; a++) {
+    if (dual.out.costs[a] > dearest) dearest = dual.out.costs[a];
   }
-  if (span < NARROW_LIMIT) {
+  if (dearest < NARROW_LIMIT) {
     try {
-      const queue = queueFor(span, dual.pairs);
+      const queue = queueFor(dearest, dual.pairs);
       return runSearches(new Potential(dual, queue, false), curve, step, meter);
     } catch (error) {
       if (!(error instanceof TooWide)) throw error;

@@ -3,20 +3,25 @@
  * and the next one only looks at faces near the shortest paths. Taking a search back costs as much as
  * it touched.
  *
- * A *potential* a has a(x) <= c(x→y) + a(y) on every arc, so d(x, z) >= a(x) - a(z), and Dijkstra's
- * method may run on the reduced costs c(x→y) + a(y) - a(x) >= 0. Suppose it runs from s, forward, and
- * write r(x) for the reduced distances. Raising a(x) by max(0, limit - r(x)) everywhere keeps it a
+ * A *potential* a has a(x) <= c(x→y) + a(y) on every arc, so d(x, z) >= a(x) - a(z), and the *reduced
+ * costs* c(x→y) + a(y) - a(x) are not negative. For a face s write r(x) for the reduced distance from
+ * s, which is d(s, x) + a(x) - a(s). Raising a(x) by max(0, limit - r(x)) everywhere keeps it a
  * potential, since r(y) is at most r(x) plus the reduced cost of x→y. It raises a(s) by `limit`, and
- * a(s̄) not at all if s̄ is that far away: so d(s, s̄) >= a(s) - a(s̄) is as good as can be. Running
+ * a(s̄) not at all if s̄ is that far away: so d(s, s̄) >= a(s) - a(s̄) is as good as can be. Going
  * backward, against the arcs, and lowering a(x) likewise serves the target instead of the source. The
  * two directions take turns: where a search has gone forward the potential is exact from its source
  * on, and a search backward from a target nearby stays close to the shortest paths.
+ *
+ * The search itself is Dijkstra's on the costs, leaving out faces with r(x) > limit: r does not fall
+ * along a path, so no path to a face within the limit is lost. Taking faces by d(s, x) and not by r(x)
+ * they come as one front, which memory likes: many times faster than the jumps from plateau to plateau
+ * of r.
  */
 import type { MonotoneQueue } from "../../graph/heap.ts";
 import type { Meter } from "../../run/meter.ts";
 import type { Arcs, DirectedDual } from "./directed-dual.ts";
 
-/** Reduced distances up to here, and sums of a few dozen of them, fit into 32 bits. */
+/** Distances up to here, and sums of a few dozen of them, fit into 32 bits. */
 export const NARROW_LIMIT = 1 << 25;
 /** Arcs scanned between two ticks of the meter. */
 const UNITS_PER_TICK = 4096;
@@ -28,8 +33,8 @@ export class TooWide extends Error {
 
 export class Potential {
   /**
-   * Length 4·pairs: for face x the potential a(x) at 2x, and at 2x + 1 its reduced distance in the last
-   * search, `#unreached` if it was not touched. Side by side, so that both come with one look.
+   * Length 4·pairs: for face x the potential a(x) at 2x, and at 2x + 1 its distance in the last search,
+   * `#unreached` if it was not touched. Side by side, so that both come with one look.
    */
   readonly #state: Int32Array | Float64Array;
   readonly #unreached: number;
@@ -49,8 +54,7 @@ export class Potential {
   readonly #into: PackedArcs;
 
   /**
-   * @param queue takes keys that differ by at most the largest reduced cost, which is at most the
-   *   cost of going once around a vertex
+   * @param queue takes keys that differ by at most the largest cost
    * @param wide hold distances in doubles rather than in 32-bit integers
    */
   constructor(readonly dual: DirectedDual, readonly queue: MonotoneQueue, readonly wide: boolean) {
@@ -85,7 +89,7 @@ export class Potential {
    * it holds both ways), or backward from that lift's antipode. Then `advance` improves the potential.
    *
    * @param x a face
-   * @param most largest reduced distance wanted; `Infinity` for the whole sphere
+   * @param most largest reduced distance wanted; `Infinity` for the whole sphere, at depth 0 only
    * @param beyond once the antipode is reached, go on by no more than this
    * @returns the distance between x and its antipode, `Infinity` if it is beyond the limit
    * @throws {TooWide} when distances pass 32 bits and the potential is not wide
@@ -103,23 +107,27 @@ export class Potential {
     state[2 * source + 1] = 0;
     touched[0] = source;
     queue.push(0, source);
-    let limit = most, found = Infinity, last = 0, count = 1, work = 0;
+    const sign = backward ? -1 : 1;
+    // A face y is within the limit if d(y) + sign·a(y) <= within.
+    let limit = most, within = limit + sign * state[2 * source];
+    let found = Infinity, furthest = 0, count = 1, work = 0;
     for (let near = queue.pop(); near >= 0; near = queue.pop()) {
-      const r = queue.key;
-      if (r > limit) break;
-      if (state[2 * near + 1] !== r) continue;
-      if (r > ceiling) throw new TooWide("distances pass 32 bits");
-      last = r;
+      const d = queue.key, at = sign * state[2 * near];
+      if (state[2 * near + 1] !== d || d + at > within) continue;
+      if (d > ceiling) throw new TooWide("distances pass 32 bits");
       if (near === target) {
-        found = r;
-        if (r + beyond < limit) limit = r + beyond;
+        found = d;
+        if (d + at + beyond < within) {
+          within = d + at + beyond;
+          limit = within - sign * state[2 * source];
+        }
       }
-      const flip = near & 1, at = state[2 * near], end = 2 * offsets[(near >> 1) + 1];
+      if (d + at > furthest) furthest = d + at;
+      const flip = near & 1, end = 2 * offsets[(near >> 1) + 1];
       for (let arc = 2 * offsets[near >> 1]; arc < end; arc += 2) {
-        const far = entries[arc] ^ flip, there = state[2 * far];
-        const reached = r + entries[arc + 1] + (backward ? at - there : there - at);
+        const far = entries[arc] ^ flip, reached = d + entries[arc + 1];
         const known = state[2 * far + 1];
-        if (reached < known && reached <= limit) {
+        if (reached < known && reached + sign * state[2 * far] <= within) {
           if (known === unreached) touched[count++] = far;
           state[2 * far + 1] = reached;
           queue.push(reached, far);
@@ -133,25 +141,27 @@ export class Potential {
     }
     meter.tick(work);
     this.#touchedCount = count;
-    this.#limit = limit === Infinity ? last : limit;
-    return found + this.bound(x);
+    // Without a limit the potential was 0 and every face was reached.
+    this.#limit = limit === Infinity ? furthest : limit;
+    return found;
   }
 
   /** Improves the potential by the last search, to the good of its source. */
   advance(): void {
-    const state = this.#state, touched = this.#touched, limit = this.#limit;
+    const state = this.#state, touched = this.#touched;
     const sign = this.depth % 2 === 1 ? -1 : 1;
+    const within = this.#limit + sign * state[2 * this.#source];
     this.#steps.push(this.#changedCount);
     this.#reserve(this.#changedCount + this.#touchedCount);
     const changed = this.#changed, former = this.#former;
     let at = this.#changedCount;
     for (let i = 0; i < this.#touchedCount; i++) {
-      const x = touched[i], r = state[2 * x + 1];
+      const x = touched[i], raise = within - state[2 * x + 1] - sign * state[2 * x];
       state[2 * x + 1] = this.#unreached;
-      if (r >= limit) continue;
+      if (raise <= 0) continue;
       changed[at] = x;
       former[at++] = state[2 * x];
-      state[2 * x] += sign * (limit - r);
+      state[2 * x] += sign * raise;
     }
     this.#changedCount = at;
     this.#touchedCount = 0;
@@ -176,7 +186,7 @@ export class Potential {
     const backward = this.depth % 2 === 1;
     const { offsets, ends, costs, edges } = backward ? this.dual.out : this.dual.into;
     const state = this.#state, source = this.#source;
-    // Walk back along tight arcs; those of reduced cost 0 may lead in circles, so depth first.
+    // Walk back along tight arcs; those of cost 0 may lead in circles, so depth first.
     const seen = new Uint8Array(2 * this.dual.pairs);
     const path: number[] = [source ^ 1], crossed: number[] = [];
     const next: number[] = [offsets[source >> 1]];
@@ -192,8 +202,7 @@ export class Potential {
       }
       const arc = next[top]++, x = ends[arc] ^ (y & 1);
       if (seen[x] !== 0 || state[2 * x + 1] === this.#unreached) continue;
-      const rise = state[2 * y] - state[2 * x];
-      if (state[2 * x + 1] + costs[arc] + (backward ? -rise : rise) !== state[2 * y + 1]) continue;
+      if (state[2 * x + 1] + costs[arc] !== state[2 * y + 1]) continue;
       seen[x] = 1;
       path.push(x);
       crossed.push(edges[arc]);
