@@ -16,7 +16,7 @@
  * posimodularity of the number of neighbours. Growing is exact too: a side that contains D and its
  * attachment t is found by searching from both, and if there is none there is none later.
  *
- * A search costs what its at most four breadth-first searches touch, which is little where the core
+ * A search costs, up to its limit, what its at most four breadth-first searches touch, which is little where the core
  * is near; memory is 40 bytes a vertex.
  */
 import type { Graph } from "./graph.ts";
@@ -29,7 +29,12 @@ export interface CoverSide {
   readonly attachments: number[];
   /** Whether growing it ended at a twisted set, so that another order might have grown it further. */
   readonly twisted: boolean;
+  /** Whether growing it ended at the limit of work. */
+  readonly short: boolean;
 }
+
+/** Work that growing may take in all for each vertex already inside. */
+const WORK_OF_SIZE = 300;
 
 /** No path, and the start of a path. */
 const NONE = -1, START = -2;
@@ -46,6 +51,10 @@ export class SideSearch {
   /** Length 4n: state 2x is node x entered, 2x + 1 node x left; the epoch it was reached in. */
   readonly #seen: Int32Array;
   #epoch = 0;
+  /** Most work for one search. */
+  #limit = 0;
+  /** Work done since growing began. */
+  #spent = 0;
   /** Length 4n: the state before, START for entries straight from the set. */
   readonly #parent: Int32Array;
   /** Length 2n: the node after and before on a path, NONE off the paths. */
@@ -77,27 +86,38 @@ export class SideSearch {
    * The side around a vertex, grown as far as it goes.
    *
    * @param v a vertex outside the core
+   * @param limit most work for one search from v
+   * @param growing most work for all searches from more than v, beside what the size allows
    * @returns the side; "core" when v lies in no side, "barred" when the sides found around it hang on
-   *   vertices that may not be attachments, "twisted" when the least set around v is
+   *   vertices that may not be attachments, "twisted" when the least set around v is, "dear" when
+   *   the limit came first
    */
-  around(v: number): CoverSide | "core" | "barred" | "twisted" {
+  around(
+    v: number,
+    limit: number,
+    growing: number,
+  ): CoverSide | "core" | "barred" | "twisted" | "dear" {
     this.#sourceEpoch++;
     this.#source[2 * v] = this.#sourceEpoch;
+    this.#limit = limit;
     const inside = [2 * v];
-    let attachments = this.#cut(this.#entries(2 * v, []), inside);
-    if (attachments === undefined) return "core";
+    const first = this.#cut(this.#entries(2 * v, []), inside);
+    if (first === undefined) return "core";
+    if (first === "dear") return "dear";
+    let attachments = first;
     if (isTwisted(attachments)) return "twisted";
     for (const x of inside) this.#source[x] = this.#sourceEpoch;
     const failed = new Set<number>();
-    let twisted = false;
+    let twisted = false, short = false;
     // The largest so far whose attachments are allowed.
     let size = 0, best: number[] = [];
     const keep = (): void => {
-      if (attachments!.some((x) => this.#mayAttach?.[x >> 1] === 0)) return;
+      if (attachments.some((x) => this.#mayAttach?.[x >> 1] === 0)) return;
       size = inside.length;
-      best = attachments!;
+      best = attachments;
     };
     keep();
+    this.#spent = 0;
     for (let i = 0; i < attachments.length;) {
       const t = attachments[i];
       if (this.core[t >> 1] !== 0 || failed.has(t)) {
@@ -106,11 +126,13 @@ export class SideSearch {
       }
       const grown = [t];
       this.#source[t] = this.#sourceEpoch;
+      this.#limit = growing + WORK_OF_SIZE * inside.length - this.#spent;
       const wider = this.#cut(this.#entries(t, attachments), grown);
-      if (wider === undefined || isTwisted(wider)) {
+      if (wider === undefined || wider === "dear" || isTwisted(wider)) {
         this.#source[t] = 0;
         failed.add(t);
-        if (wider !== undefined) twisted = true;
+        if (wider === "dear") short = true;
+        else if (wider !== undefined) twisted = true;
         i++;
         continue;
       }
@@ -123,7 +145,7 @@ export class SideSearch {
       i = 0;
     }
     if (size === 0) return "barred";
-    return { inside: inside.slice(0, size), attachments: best, twisted };
+    return { inside: inside.slice(0, size), attachments: best, twisted, short };
   }
 
   /** Where paths may start once t is in the set: its neighbours, and the other attachments. */
@@ -144,7 +166,7 @@ export class SideSearch {
    * @param entries first nodes of the paths
    * @param grown the nodes cut off together with the set are added here
    */
-  #cut(entries: readonly number[], grown: number[]): number[] | undefined {
+  #cut(entries: readonly number[], grown: number[]): number[] | "dear" | undefined {
     // The set next to its own mirror image cannot be cut off.
     if (entries.some((x) => this.#source[x ^ 1] === this.#sourceEpoch)) return undefined;
     let paths = 0;
@@ -152,7 +174,7 @@ export class SideSearch {
       const reached = this.#search(entries);
       if (reached !== undefined) {
         this.#release();
-        return this.#collect(reached, entries, grown);
+        return reached < 0 ? "dear" : this.#collect(reached, entries, grown);
       }
       paths++;
     }
@@ -160,13 +182,13 @@ export class SideSearch {
     return undefined;
   }
 
-  /** One more path, or the number of states reached when there is none. */
+  /** One more path; or the number of states reached when there is none, -1 beyond the limit. */
   #search(entries: readonly number[]): number | undefined {
     const { offsets, targets } = this.#graph;
     const seen = this.#seen, parent = this.#parent, queue = this.#queue;
     const before = this.#before, after = this.#after, core = this.core;
     const source = this.#source, sourceEpoch = this.#sourceEpoch;
-    const epoch = ++this.#epoch;
+    const epoch = ++this.#epoch, limit = this.#limit;
     let tail = 0, work = 0;
     // Enters node x from a state; true when a path ends there.
     const enter = (x: number, from: number): boolean => {
@@ -208,17 +230,26 @@ export class SideSearch {
         queue[tail++] = 2 * x;
       }
       work += 1 + offsets[v + 1] - offsets[v];
+      if (work > limit) {
+        this.#count(work);
+        return -1;
+      }
       for (let a = offsets[v]; a < offsets[v + 1]; a++) {
         const y = 2 * targets[a] + sheet;
         if (source[y] === sourceEpoch || after[x] === y) continue;
         if (enter(y, state)) {
-          this.#tick(work);
+          this.#count(work);
           return undefined;
         }
       }
     }
-    this.#tick(work + 1);
+    this.#count(work + 1);
     return tail;
+  }
+
+  #count(work: number): void {
+    this.#spent += work;
+    this.#tick(work);
   }
 
   /** Turns the states that lead to an entered node into a change of the paths. */

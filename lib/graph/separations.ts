@@ -13,6 +13,7 @@
  * to a reduction and are kept apart; their middle counts as core.
  */
 import type { Meter } from "../run/meter.ts";
+import { Random } from "../run/random.ts";
 import { degree, type Graph } from "./graph.ts";
 import { type CoverSide, SideSearch } from "./separations-search.ts";
 
@@ -27,6 +28,7 @@ export interface Side {
   readonly attachmentSide: Uint8Array;
 }
 
+/** Bipartite sides of a graph, or the reason why there is no big side. */
 export interface Separations {
   /**
    * Sides that cannot be grown by an attachment, disjoint and without attachments inside another
@@ -46,15 +48,29 @@ export interface Separations {
    * without two disjoint odd cycles whose odd cycle transversals have at least four vertices.
    */
   readonly twisted: number;
-  /** False when the work allowed ran out before all vertices were looked at. */
+  /** False when the work allowed ran out before everything was looked at. */
   readonly complete: boolean;
 }
 
 /** Most vertices of a star that stands for a side: a centre and three legs of one or two. */
 const STAR = [4, 5];
 
-/** Units of work allowed for each vertex and edge. Grids with thousands of sides take about 100. */
-const WORK_PER_ELEMENT = 2000;
+/**
+ * Units of work allowed for each vertex and edge. Grids with thousands of sides take about 100, random
+ * cubic graphs 200.
+ */
+const WORK_PER_ELEMENT = 500;
+/**
+ * Work for one search at first, beside the credit; what takes more waits until the core has been
+ * found elsewhere.
+ */
+const FIRST_LIMIT = 400;
+/** Credit for each vertex and edge to begin with: the first core vertices are far from any other. */
+const FIRST_CREDIT = 50;
+/** Credit that each vertex looked at adds. */
+const MORE_CREDIT = 100;
+/** Work for growing a side, later; at first an eighth of all that is left. */
+const GROWING_LIMIT = 50_000;
 
 /** What `separations` may be told. */
 export interface SeparationsOptions {
@@ -71,7 +87,7 @@ export interface SeparationsOptions {
  * @param options what is known and what is not wanted
  * @returns disjoint sides, the core, and what was left out. Every side found is one whatever the
  *   graph is like; that no larger ones are missed is proved for graphs without twisted sets.
- *   Near-linear in practice; stops with complete = false after 2000·(n + m) units of work.
+ *   Near-linear in practice; stops with complete = false after 500·(n + m) units of work.
  * @throws {Interrupted} when the meter runs out
  */
 export function separations(
@@ -96,6 +112,7 @@ class Growing {
   #twisted = 0;
   /** Whether the core holds vertices that may lie in a side larger than a star. */
   #guessed = false;
+  #complete = true;
 
   constructor(graph: Graph, meter: Meter, { mayAttach, known }: SeparationsOptions) {
     this.#graph = graph;
@@ -112,9 +129,9 @@ class Growing {
 
   run(): Separations {
     const { n, offsets, targets } = this.#graph;
-    const { core } = this.#search;
     const queue = new Int32Array(n);
-    let complete = true;
+    const later: number[] = [];
+    let credit = FIRST_CREDIT * (n + this.#graph.m);
     // Roots of large degree first: they are likely to be core, and the rest is then near to it.
     for (const root of byDegree(this.#graph)) {
       if (this.#queued[root] !== 0) continue;
@@ -123,10 +140,10 @@ class Growing {
       this.#queued[root] = 1;
       for (let head = 0; head < tail; head++) {
         const v = queue[head];
-        if (this.#role[v] !== 1 && this.#role[v] !== 4 && core[v] === 0) {
-          if (this.#workLeft > 0) this.#settle(v);
-          else complete = false;
-        }
+        const before = this.#workLeft;
+        const more = Math.max(0, credit);
+        if (!this.#settle(v, FIRST_LIMIT + more, 4 * FIRST_LIMIT + more)) later.push(v);
+        credit += MORE_CREDIT - (before - this.#workLeft);
         for (let a = offsets[v]; a < offsets[v + 1]; a++) {
           const u = targets[a];
           if (this.#queued[u] !== 0) continue;
@@ -135,6 +152,9 @@ class Growing {
         }
       }
     }
+    // What was too dear: in random order, so that core vertices are soon spread everywhere.
+    new Random(n).shuffle(later);
+    for (const v of later) this.#settle(v, Infinity, Math.max(GROWING_LIMIT, this.#workLeft / 8));
     return {
       sides: this.#sides,
       small: this.#small,
@@ -142,49 +162,67 @@ class Growing {
       proven: this.#proven,
       crossing: this.#crossing,
       twisted: this.#twisted,
-      complete,
+      complete: this.#complete,
     };
   }
 
-  /** Decides what v is. Inner vertices of chains are passed over: they come with their side. */
-  #settle(v: number): void {
+  /**
+   * Decides what v is. Inner vertices of chains are passed over: they come with their side.
+   *
+   * @returns false when v took too much work and may be tried with a larger limit
+   */
+  #settle(v: number, limit: number, growing: number): boolean {
     const { core } = this.#search;
-    if (degree(this.#graph, v) === 2) return;
-    const found = this.#hasFourCoreNeighbours(v) ? "core" : this.#search.around(v);
+    const role = this.#role;
+    if (role[v] === 1 || role[v] === 4 || core[v] !== 0 || degree(this.#graph, v) === 2) {
+      return true;
+    }
+    if (this.#workLeft <= 0) {
+      this.#complete = false;
+      return true;
+    }
+    const found = this.#hasFourCoreNeighbours(v) ? "core" : this.#search.around(v, limit, growing);
+    if (found === "dear" || (typeof found !== "string" && found.short && limit < Infinity)) {
+      return false;
+    }
     if (typeof found === "string") {
       core[v] = 1;
       this.#guessed ||= found === "barred";
       if (found === "core" && !this.#guessed) this.#proven[v] = 1;
-      if (found === "twisted") {
-        // Room for the sides within the twisted set: its middle stands in for a core.
-        this.#guessed = true;
-        this.#twisted++;
-        const { offsets, targets } = this.#graph;
-        for (let a = offsets[v]; a < offsets[v + 1]; a++) {
-          const u = targets[a];
-          if (this.#role[u] !== 1 && degree(this.#graph, u) > 2) core[u] = 1;
-        }
-      }
-      return;
+      if (found === "twisted") this.#makeRoom(v);
+      return true;
     }
     if (found.twisted) this.#twisted++;
+    if (found.short) this.#complete = false;
     const side = asSide(found);
     if (this.#isSmall(side)) {
       this.#small.push(side);
+      this.#guessed ||= found.short;
       core[v] = 1;
-      return;
+      return true;
     }
-    const role = this.#role;
     const crosses = side.inside.some((u) => role[u] === 1 || role[u] === 2) ||
       side.attachments.some((u) => role[u] === 1);
     if (crosses) {
       this.#crossing++;
       for (const u of side.inside) if (role[u] === 0) role[u] = 4;
-      return;
+      return true;
     }
     this.#sides.push(side);
     for (const u of side.inside) role[u] = 1;
     for (const u of side.attachments) role[u] = 2;
+    return true;
+  }
+
+  /** Room for the sides within a twisted set: v and its neighbours stand in for a core. */
+  #makeRoom(v: number): void {
+    this.#guessed = true;
+    this.#twisted++;
+    const { offsets, targets } = this.#graph;
+    for (let a = offsets[v]; a < offsets[v + 1]; a++) {
+      const u = targets[a];
+      if (this.#role[u] !== 1 && degree(this.#graph, u) > 2) this.#search.core[u] = 1;
+    }
   }
 
   #hasFourCoreNeighbours(v: number): boolean {

@@ -1,7 +1,7 @@
 /**
  * Chooses the blocks of one round: sides larger than their gadget, sides on the same attachments that
- * one gadget can stand for together, and chains longer than a gadget. O(size of the graph) beside
- * finding the sides.
+ * one gadget can stand for together, and chains longer than a gadget; or, in a round of its own, what
+ * hangs on single vertices. O(size of the graph) beside finding the sides.
  *
  * Progress is measured by the number of vertices of degree three or more, then by the number of
  * vertices: every block chosen makes the first smaller, or leaves it and makes the second smaller,
@@ -12,13 +12,24 @@ import { type Separations, separations, type SeparationsOptions } from "../graph
 import { chains } from "../graph/separations-chains.ts";
 import type { Meter } from "../run/meter.ts";
 import type { Block } from "./blocks-costs.ts";
+import { hangingBlocks } from "./blocks-peel.ts";
 import { gadgetSize } from "./gadgets.ts";
 
 /** The blocks of a round and what was found on the way. */
 export interface Choice {
   /** Blocks that do not touch each other: insides disjoint, no attachment inside another. */
   readonly blocks: readonly Block[];
-  readonly separations: Separations;
+  /** Absent where a round takes off what hangs on single vertices, before any side is looked for. */
+  readonly separations?: Separations;
+}
+
+/** What `chooseBlocks` may be told. */
+export interface ChooseOptions extends SeparationsOptions {
+  /**
+   * Begin with a round for what hangs on single vertices. This is linear whatever the graph is like;
+   * but what is left may then be no larger than a gadget, and no block is found there.
+   */
+  readonly peel?: boolean;
 }
 
 /**
@@ -28,8 +39,10 @@ export interface Choice {
 export function chooseBlocks(
   graph: Graph,
   meter: Meter,
-  options: SeparationsOptions = {},
+  options: ChooseOptions = {},
 ): Choice {
+  const hanging = options.peel === true ? hangingBlocks(graph, meter) : [];
+  if (hanging.length > 0) return { blocks: hanging };
   const found = separations(graph, meter, options);
   const taken = new Taken(graph.n);
   const groups = new Map<string, Group>();

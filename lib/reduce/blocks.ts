@@ -33,11 +33,11 @@ export function reduceBlocks(start: CostGraph, meter: Meter): Reduction {
   let now = start;
   let known: Uint8Array | undefined;
   for (;;) {
-    const { blocks, separations } = chooseBlocks(now.graph, meter, { known });
+    const { blocks, separations } = chooseBlocks(now.graph, meter, { known, peel: true });
     if (blocks.length === 0) return { rounds, after: now };
     const round = replaceByGadgets(now, blocks, meter);
     rounds.push(round);
-    known = stillKnown(round, separations.proven);
+    known = separations && stillKnown(round, separations.proven);
     now = round.after;
   }
 }

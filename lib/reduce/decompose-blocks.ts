@@ -44,7 +44,7 @@ export function blocksOf(graph: Graph, meter: Meter): BlockList {
       const { ids }: CostGraph = now;
       const isItem = Uint8Array.from(ids, (id) => id < n ? 1 : 0);
       const { blocks, separations }: Choice = chooseBlocks(now.graph, meter, { mayAttach: isItem });
-      complete &&= separations.complete;
+      complete &&= separations?.complete ?? true;
       if (blocks.length === 0) break;
       const round = replaceByGadgets(now, blocks, meter);
       for (const { block, gadget } of round.blocks) {
