@@ -15,9 +15,10 @@ import { checkedBound } from "../support/proofs.ts";
 
 /**
  * Sizes of largest codes: N. J. A. Sloane, "Challenge problems: independent sets in graphs", OEIS
- * A265032 (https://oeis.org/A265032/a265032.html). Numbers of edges: 543 for 1dc.64 stands there as
- * the example of the file format; the others are those of the benchmark tables of semidefinite
- * programming codes for the Lovász theta number of these graphs, from memory.
+ * A265032 (https://oeis.org/A265032/a265032.html), seen there for 1dc, 1tc up to 64 and 1et.64; the
+ * sizes of 2dc.128, 1tc.128, 1tc.256, 1et.128 and 1zc.128 come from public listings of best-known
+ * values for the same graphs. Numbers of edges: 543 for 1dc.64 stands on the OEIS page as the example
+ * of the file format; the others are written from memory.
  */
 const CASES: [string, Graph, number, number][] = [
   ["1dc.64", singleDeletion(6), 543, 10],
