@@ -32,14 +32,15 @@ export interface SphereDual {
   readonly into: DualArcs;
 }
 
-/** The arcs at face 2k: entries offsets[k] … offsets[k+1]-1. */
+/** The arcs at face 2k are those from offsets[k] to offsets[k+1]-1. */
 export interface DualArcs {
   /** Length pairs + 1. */
   readonly offsets: Int32Array;
-  /** Length m: the face at the other end of the arc at the even face. */
-  readonly ends: Int32Array;
-  /** Length m. */
-  readonly costs: Float64Array;
+  /**
+   * Length 2m: for arc i of an even face the face at its other end at 2i, its cost at 2i + 1. In 32
+   * bits where all costs fit.
+   */
+  readonly entries: Int32Array | Float64Array;
 }
 
 /**
@@ -58,15 +59,22 @@ export function sphereDual(
   const { offsets, targets, reverse } = inner;
   const n = offsets.length - 1, darts = targets.length;
   const { next, previous } = requireRotation(inner, rotation);
-  const left = new Int32Array(darts).fill(-1);
-  let pairs = 0;
-  for (let start = 0; start < darts; start++) {
-    if (left[start] >= 0) continue;
+  // Faces are traced in breadth-first order, so that neighbours are near in memory.
+  const left = new Int32Array(darts).fill(-1), queue = new Int32Array(darts);
+  let pairs = 0, tail = 0;
+  const trace = (start: number): void => {
     for (let d = start; left[d] < 0; d = previous[reverse[next[reverse[d]]]]) {
       left[d] = 2 * pairs;
       left[reverse[d]] = 2 * pairs + 1;
+      queue[tail++] = d;
     }
     pairs++;
+  };
+  trace(0);
+  for (let head = 0; head < tail; head++) {
+    const d = queue[head];
+    if (left[next[d]] < 0) trace(next[d]);
+    if (left[previous[d]] < 0) trace(previous[d]);
   }
   // Euler's formula for the cover: 2n vertices, as many edges as H has darts, connected.
   const characteristic = 2 * n - darts + 2 * pairs;
@@ -82,20 +90,21 @@ export function sphereDual(
       if (targets[d] > v) edgeOf[d] = edgeOf[reverse[d]] = e++;
     }
   }
+  const narrow = costs.every((cost) => cost < 2 ** 31);
   // Around (v,0) the arcs go counterclockwise: across d from the corner before d to the one after.
   const arcs = (near: (d: number) => number, far: (d: number) => number): DualArcs => {
     const at = new Int32Array(pairs + 1);
-    const ends = new Int32Array(darts / 2), arcCosts = new Float64Array(darts / 2);
+    const entries = narrow ? new Int32Array(darts) : new Float64Array(darts);
     for (let d = 0; d < darts; d++) if ((near(d) & 1) === 0) at[(near(d) >> 1) + 1]++;
     for (let k = 0; k < pairs; k++) at[k + 1] += at[k];
     const fill = at.slice();
     for (let d = 0; d < darts; d++) {
       if ((near(d) & 1) !== 0) continue;
       const a = fill[near(d) >> 1]++;
-      ends[a] = far(d);
-      arcCosts[a] = costs[edgeOf[d]];
+      entries[2 * a] = far(d);
+      entries[2 * a + 1] = costs[edgeOf[d]];
     }
-    return { offsets: at, ends, costs: arcCosts };
+    return { offsets: at, entries };
   };
   const before = (d: number) => left[previous[d]], after = (d: number) => left[d];
   return { pairs, left, out: arcs(before, after), into: arcs(after, before) };
@@ -146,9 +155,9 @@ export function requireMeetsOneSided(dual: SphereDual, sources: Int32Array): voi
     met[root] = 1;
     for (let head = 0; head < tail; head++) {
       const x = queue[head], row = x >> 1;
-      for (const { offsets, ends } of [out, into]) {
+      for (const { offsets, entries } of [out, into]) {
         for (let a = offsets[row]; a < offsets[row + 1]; a++) {
-          const y = ends[a] ^ (x & 1), lift = 1 + (y & 1);
+          const y = entries[2 * a] ^ (x & 1), lift = 1 + (y & 1);
           if (met[y >> 1] === 0) {
             met[y >> 1] = lift;
             queue[tail++] = y;

@@ -101,10 +101,9 @@ class Searches {
     this.#unreached = narrow ? 2 ** 31 - 1 : Infinity;
     for (let x = 0; x < faces; x++) this.#state[2 * x + 1] = this.#unreached;
     this.#touched = new Int32Array(faces);
+    const { entries } = dual.out;
     let dearest = 0;
-    for (let a = 0; a < dual.out.costs.length; a++) {
-      if (dual.out.costs[a] > dearest) dearest = dual.out.costs[a];
-    }
+    for (let i = 1; i < entries.length; i += 2) if (entries[i] > dearest) dearest = entries[i];
     this.#queue = dearest <= MOST_BUCKETS ? new BucketQueue(dearest) : new HeapQueue();
   }
 
@@ -120,7 +119,7 @@ class Searches {
   /** A search that serves face x: from x or its antipode, whichever the potential says more for. */
   search(x: number, limit: number, where: string): void {
     const backward = this.depth % 2 === 1;
-    const { offsets, ends, costs } = backward ? this.dual.into : this.dual.out;
+    const { offsets, entries } = backward ? this.dual.into : this.dual.out;
     const state = this.#state, queue = this.#queue, touched = this.#touched;
     const unreached = this.#unreached;
     const source = (state[2 * x] >= state[2 * (x ^ 1)]) === backward ? x ^ 1 : x;
@@ -139,8 +138,9 @@ class Searches {
       last = d;
       settled++;
       const flip = near & 1, row = near >> 1, at = sign * state[2 * near];
-      for (let arc = offsets[row]; arc < offsets[row + 1]; arc++) {
-        const far = ends[arc] ^ flip, cost = costs[arc], there = sign * state[2 * far];
+      const end = 2 * offsets[row + 1];
+      for (let arc = 2 * offsets[row]; arc < end; arc += 2) {
+        const far = entries[arc] ^ flip, cost = entries[arc + 1], there = sign * state[2 * far];
         if (cost + there < at) throw new Error(`internal: ${where}: not a potential`);
         const reached = d + cost;
         if (reached >= state[2 * far + 1] || reached + there > within) continue;

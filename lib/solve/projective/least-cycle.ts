@@ -84,7 +84,7 @@ function runSearches(
   const proven = new Uint8Array(faces.length);
   /** For each source the best bound so far. */
   const bounds = new Float64Array(faces.length);
-  let cost = Infinity, crossed: number[] = [];
+  let cost = Infinity, crossed: number[] = [], done = 0;
   try {
     prove(0, faces.length);
   } catch (error) {
@@ -95,7 +95,7 @@ function runSearches(
 
   /** Proves the sources from low to high - 1. The depth of the recursion is logarithmic. */
   function prove(low: number, high: number): void {
-    noteProven();
+    noteProven(low, high);
     const open: number[] = [];
     for (let i = low; i < high; i++) if (proven[i] === 0) open.push(i);
     if (open.length === 0) return;
@@ -123,12 +123,12 @@ function runSearches(
   }
 
   /** Marks the sources that the potential, with the least cost known by now, proves. */
-  function noteProven(): void {
-    let done = 0;
-    for (let i = 0; i < faces.length; i++) {
+  function noteProven(low: number, high: number): void {
+    for (let i = low; i < high; i++) {
       bounds[i] = Math.max(bounds[i], potential.bound(faces[i]));
-      if (bounds[i] > cost - step) proven[i] = 1;
-      done += proven[i];
+      if (proven[i] !== 0 || bounds[i] <= cost - step) continue;
+      proven[i] = 1;
+      done++;
     }
     meter.report("shortest one-sided cycle", { done, total: faces.length });
   }
