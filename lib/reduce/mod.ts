@@ -14,7 +14,8 @@
  */
 export { type HalfIntegralKernel, halfIntegralKernel } from "./kernel.ts";
 export { liftBlocks, reduceBlocks, type Reduction } from "./blocks.ts";
-export type { CostGraph } from "./blocks-costs.ts";
+export type { Block, CostGraph } from "./blocks-costs.ts";
+export type { Gadget } from "./gadgets.ts";
 export type { ReplacedBlock, Replacing } from "./gadgets-apply.ts";
 export {
   type CombinedAnswer,
