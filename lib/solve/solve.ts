@@ -36,7 +36,7 @@ export interface SolveOptions extends RunOptions {
  * component needs, which `parts` tells.
  */
 export async function solve(instance: Instance, options: SolveOptions = {}): Promise<Solution> {
-  checkRunOptions(options);
+  checkSolveOptions(options);
   const question = pose(instance, options);
   const began = performance.now();
   if (typeof question === "string") {
@@ -54,6 +54,40 @@ export async function solve(instance: Instance, options: SolveOptions = {}): Pro
     ),
   );
   return answer(instance, options, { question, outcome }, performance.now() - began);
+}
+
+/** Options by name; anything else is refused, so that a misspelt one is not passed over. */
+const OPTIONS: Readonly<Record<keyof SolveOptions, true>> = {
+  timeLimitMs: true,
+  signal: true,
+  seed: true,
+  workers: true,
+  onProgress: true,
+  choose: true,
+  leave: true,
+  engine: true,
+};
+const ENGINES: Readonly<Record<EngineName, true>> = {
+  bipartite: true,
+  transversal: true,
+  projective: true,
+  branch: true,
+  mip: true,
+};
+
+function checkSolveOptions(options: SolveOptions): void {
+  const unknown = Object.keys(options).filter((name) => !Object.hasOwn(OPTIONS, name));
+  if (unknown.length > 0) {
+    throw new RangeError(
+      `expected options among ${Object.keys(OPTIONS).join(", ")}, got ${unknown.join(", ")}`,
+    );
+  }
+  if (options.engine !== undefined && !Object.hasOwn(ENGINES, options.engine)) {
+    throw new RangeError(
+      `engine: expected one of ${Object.keys(ENGINES).join(", ")}, got ${options.engine}`,
+    );
+  }
+  checkRunOptions(options);
 }
 
 /** The instance with what was required and ruled out taken off. */

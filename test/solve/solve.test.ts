@@ -122,5 +122,9 @@ describe("solve", () => {
 
   it("refuses options that mean nothing before any work", async () => {
     await expect(solve(hardInstance(), { timeLimitMs: -1 })).rejects.toThrow(RangeError);
+    const misspelt = { timeLimit: 5 } as Record<string, number>;
+    await expect(solve(hardInstance(), misspelt)).rejects.toThrow(/timeLimitMs.*got timeLimit$/);
+    const magic = "magic" as EngineName;
+    await expect(solve(hardInstance(), { engine: magic })).rejects.toThrow(/projective.*got magic/);
   });
 });
