@@ -44,12 +44,10 @@ export class Potential {
   #touchedCount = 0;
   #limit = 0;
   #source = 0;
-  /** What `advance` has changed: faces and their former values, the last change last. */
-  #changed = new Int32Array(1024);
-  #former: Int32Array | Float64Array;
-  #changedCount = 0;
-  /** `#changedCount` before each `advance`. */
-  readonly #steps: number[] = [];
+  /** How to take back each `advance`, the last one last. */
+  readonly #undo: Undo[] = [];
+  /** Records of the same depth use the same arrays again. */
+  readonly #spare: Undo[] = [];
   readonly #out: PackedArcs;
   readonly #into: PackedArcs;
 
@@ -64,14 +62,13 @@ export class Potential {
     this.#state = this.#numbers(2 * faces);
     for (let x = 0; x < faces; x++) this.#state[2 * x + 1] = this.#unreached;
     this.#touched = new Int32Array(faces);
-    this.#former = this.#numbers(1024);
     this.#out = this.#packed(dual.out);
     this.#into = this.#packed(dual.into);
   }
 
   /** Number of searches the potential stands on; the next runs forward if it is even. */
   get depth(): number {
-    return this.#steps.length;
+    return this.#undo.length;
   }
 
   /** The largest reduced distance up to which the last search is complete. */
@@ -148,32 +145,61 @@ export class Potential {
 
   /** Improves the potential by the last search, to the good of its source. */
   advance(): void {
-    const state = this.#state, touched = this.#touched;
+    const state = this.#state, touched = this.#touched, unreached = this.#unreached;
     const sign = this.depth % 2 === 1 ? -1 : 1;
     const within = this.#limit + sign * state[2 * this.#source];
-    this.#steps.push(this.#changedCount);
-    this.#reserve(this.#changedCount + this.#touchedCount);
-    const changed = this.#changed, former = this.#former;
-    let at = this.#changedCount;
-    for (let i = 0; i < this.#touchedCount; i++) {
-      const x = touched[i], raise = within - state[2 * x + 1] - sign * state[2 * x];
-      state[2 * x + 1] = this.#unreached;
-      if (raise <= 0) continue;
-      changed[at] = x;
-      former[at++] = state[2 * x];
-      state[2 * x] += sign * raise;
+    const undo = this.#record(this.#touchedCount);
+    const { faces, former } = undo;
+    if (faces === undefined) {
+      // In the order of memory, not of the search.
+      for (let x = 0; x < former.length; x++) {
+        const d = state[2 * x + 1], now = state[2 * x];
+        former[x] = now;
+        if (d === unreached) continue;
+        state[2 * x + 1] = unreached;
+        const raised = sign * (within - d);
+        if (sign * (raised - now) > 0) state[2 * x] = raised;
+      }
+    } else {
+      for (let i = 0; i < this.#touchedCount; i++) {
+        const x = touched[i], d = state[2 * x + 1], now = state[2 * x];
+        faces[i] = x;
+        former[i] = now;
+        state[2 * x + 1] = unreached;
+        const raised = sign * (within - d);
+        if (sign * (raised - now) > 0) state[2 * x] = raised;
+      }
     }
-    this.#changedCount = at;
     this.#touchedCount = 0;
+    this.#undo.push(undo);
   }
 
   /** Takes the last `advance` back. */
   retreat(): void {
-    const begin = this.#steps.pop();
-    if (begin === undefined) throw new RangeError("no search to take back");
-    const state = this.#state, changed = this.#changed, former = this.#former;
-    for (let i = begin; i < this.#changedCount; i++) state[2 * changed[i]] = former[i];
-    this.#changedCount = begin;
+    const undo = this.#undo.pop();
+    if (undo === undefined) throw new RangeError("no search to take back");
+    const state = this.#state, { faces, former, count } = undo;
+    if (faces === undefined) {
+      for (let x = 0; x < former.length; x++) state[2 * x] = former[x];
+    } else {
+      for (let i = 0; i < count; i++) state[2 * faces[i]] = former[i];
+    }
+  }
+
+  /** Arrays to write `count` former values down in: a list, or the whole if that is no longer. */
+  #record(count: number): Undo {
+    const spare = this.#spare[this.depth], all = this.#state.length / 2;
+    if (count > all / SPARSE) {
+      if (spare !== undefined && spare.faces === undefined) return spare;
+      return this.#spare[this.depth] = { faces: undefined, former: this.#numbers(all), count: all };
+    }
+    if (spare?.faces !== undefined && spare.faces.length >= count) {
+      spare.count = count;
+      return spare;
+    }
+    const size = Math.min(2 * count, Math.ceil(all / SPARSE));
+    const undo = { faces: new Int32Array(size), former: this.#numbers(size), count };
+    return this.#spare[this.depth] = undo;
   }
 
   /**
@@ -230,16 +256,18 @@ export class Potential {
     }
     return { offsets, entries };
   }
+}
 
-  #reserve(length: number): void {
-    if (length <= this.#changed.length) return;
-    const size = Math.max(length, 2 * this.#changed.length);
-    const changed = new Int32Array(size), former = this.#numbers(size);
-    changed.set(this.#changed);
-    former.set(this.#former);
-    this.#changed = changed;
-    this.#former = former;
-  }
+/** Searches that touch less than this fraction of the sphere note what they touched; others all. */
+const SPARSE = 8;
+
+/** What a search changed. */
+interface Undo {
+  /** The faces whose former potentials stand in `former`; absent where that holds all of them. */
+  readonly faces: Int32Array | undefined;
+  readonly former: Int32Array | Float64Array;
+  /** How many of the entries count. */
+  count: number;
 }
 
 /** Arcs with end and cost side by side. */
