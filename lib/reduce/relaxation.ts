@@ -24,6 +24,8 @@ export interface Relaxation {
   readonly order: Int32Array;
   /** Length n, by network vertex: LEFT_ONLY, RIGHT_ONLY or BOTH. */
   readonly copies: Uint8Array;
+  /** Length 2m: the edge of the graph that each arc of the network belongs to. */
+  readonly edgeAt: Int32Array;
 }
 
 /** Vertices are numbered in clusters of about so many, so that searches stay in the cache. */
@@ -38,7 +40,7 @@ const CLUSTER = 1024;
  * @throws {Interrupted} when the meter runs out
  */
 export function relaxationOf(graph: Graph, weights: Float64Array, meter: Meter): Relaxation {
-  const { n, m, offsets, targets } = graph;
+  const { n, m, offsets, targets, edgeOf } = graph;
   const { order, rank, copies } = clustered(graph, meter);
   const starts = new Int32Array(n + 1);
   const supply = new Float64Array(n), demand = new Float64Array(n);
@@ -51,10 +53,14 @@ export function relaxationOf(graph: Graph, weights: Float64Array, meter: Meter):
   let scans = 0;
   // Rows sorted by number: in ascending order every vertex enters itself in its neighbours' rows.
   const next = starts.slice(0, n);
-  const ends = new Int32Array(2 * m);
+  const ends = new Int32Array(2 * m), edgeAt = new Int32Array(2 * m);
   for (let i = 0; i < n; i++) {
     const v = order[i];
-    for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) ends[next[rank[targets[a]]]++] = i;
+    for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) {
+      const p = next[rank[targets[a]]]++;
+      ends[p] = i;
+      edgeAt[p] = edgeOf[a];
+    }
     scans += 1 + offsets[v + 1] - offsets[v];
     if (scans >= BATCH) {
       meter.tick(scans);
@@ -70,7 +76,13 @@ export function relaxationOf(graph: Graph, weights: Float64Array, meter: Meter):
     for (; p < end; p++) twin[p] = next[ends[p]]++;
   }
   const network = { n, offsets: starts, targets: ends, twin };
-  return { network, state: { supply, demand, flow: new Float64Array(2 * m) }, order, copies };
+  return {
+    network,
+    state: { supply, demand, flow: new Float64Array(2 * m) },
+    order,
+    copies,
+    edgeAt,
+  };
 }
 
 /**
@@ -79,19 +91,13 @@ export function relaxationOf(graph: Graph, weights: Float64Array, meter: Meter):
  * @returns length m, by edge of the graph: integers >= 0 whose sum is at most w(V)
  */
 export function doubledCostsOf(graph: Graph, relaxation: Relaxation): Float64Array {
-  const { n, offsets, targets, edgeOf } = graph;
-  const { network, state: { flow }, order, copies } = relaxation;
+  const { network: { n, offsets }, state: { flow }, copies, edgeAt } = relaxation;
   const doubled = new Float64Array(graph.m);
-  const rank = new Int32Array(n);
-  for (let i = 0; i < n; i++) rank[order[i]] = i;
-  // The walk that filled the rows, again: so each arc is met with the edge it came from.
-  const next = network.offsets.slice(0, n);
-  for (let i = 0; i < n; i++) {
-    const v = order[i];
-    for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) {
-      const j = rank[targets[a]], p = next[j]++;
-      if (copies[j] === BOTH) doubled[edgeOf[a]] += flow[p];
-      else if (copies[j] === RIGHT_ONLY) doubled[edgeOf[a]] += 2 * flow[p];
+  for (let v = 0; v < n; v++) {
+    if (copies[v] === LEFT_ONLY) continue;
+    const times = copies[v] === BOTH ? 1 : 2;
+    for (let p = offsets[v], end = offsets[v + 1]; p < end; p++) {
+      if (flow[p] > 0) doubled[edgeAt[p]] += times * flow[p];
     }
   }
   return doubled;
@@ -108,39 +114,44 @@ function clustered(
   meter: Meter,
 ): { order: Int32Array; rank: Int32Array; copies: Uint8Array } {
   const { n, offsets, targets } = graph;
-  const order = new Int32Array(n), rank = new Int32Array(n).fill(-1);
-  const side = new Uint8Array(n), copies = new Uint8Array(n);
+  const order = new Int32Array(n), rank = new Int32Array(n);
+  const copies = new Uint8Array(n);
   // A vertex enters `border` when it is met; `ball` holds those met in the present cluster.
   const border = new Int32Array(n), ball = new Int32Array(n);
-  const met = new Uint8Array(n), inBall = new Int32Array(n).fill(-1);
-  let count = 0, scans = 0;
+  // 0: not met; otherwise 4·(last cluster that met it, from 1) + 2·side, + 1 once it has its number.
+  const tag = new Int32Array(n);
+  let count = 0, scans = 0, cluster = 0;
   for (let root = 0; root < n; root++) {
-    if (met[root] !== 0) continue;
+    if (tag[root] !== 0) continue;
     const first = count;
     let bipartite = true, next = 0, entered = 0;
-    met[root] = 1;
+    tag[root] = 4 * (cluster + 1);
     border[entered++] = root;
     while (next < entered) {
       const centre = border[next++];
-      if (rank[centre] >= 0) continue;
+      if ((tag[centre] & 1) !== 0) continue;
       let head = 0, tail = 0;
-      const cluster = count, full = count + CLUSTER;
+      const full = count + CLUSTER, entry = 4 * ++cluster;
       ball[tail++] = centre;
-      inBall[centre] = cluster;
+      tag[centre] = entry + (tag[centre] & 2);
       while (head < tail && count < full) {
-        const v = ball[head++], other = 1 - side[v];
+        const v = ball[head++], other = 2 - (tag[v] & 2);
+        tag[v] |= 1;
         rank[v] = count;
+        copies[count] = other === 2 ? LEFT_ONLY : RIGHT_ONLY;
         order[count++] = v;
         for (let a = offsets[v], end = offsets[v + 1]; a < end; a++) {
-          const u = targets[a];
-          if (met[u] === 0) {
-            met[u] = 1;
-            side[u] = other;
+          const u = targets[a], t = tag[u];
+          if (t === 0) {
+            tag[u] = entry + other;
             border[entered++] = u;
-          } else if (side[u] !== other) bipartite = false;
-          if (rank[u] < 0 && inBall[u] !== cluster) {
-            inBall[u] = cluster;
             ball[tail++] = u;
+          } else {
+            if ((t & 2) !== other) bipartite = false;
+            if ((t & 1) === 0 && t < entry) {
+              tag[u] = entry + (t & 2);
+              ball[tail++] = u;
+            }
           }
         }
         scans += 1 + offsets[v + 1] - offsets[v];
@@ -150,7 +161,7 @@ function clustered(
         }
       }
     }
-    for (let i = first; i < count; i++) copies[i] = bipartite ? side[order[i]] : BOTH;
+    if (!bipartite) copies.fill(BOTH, first, count);
   }
   return { order, rank, copies };
 }
