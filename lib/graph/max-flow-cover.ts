@@ -28,8 +28,8 @@ export interface CoverFlow {
   readonly flow: Float64Array;
 }
 
-/** Label of a node from which no demand can be reached. */
-const NEVER = 0x3fffffff;
+/** Label of a copy from which no demand has been reached, and of one cut off for good. */
+const NEVER = 0x3fffffff, CUT_OFF = NEVER + 1;
 /** Exact labels are computed anew after scanning so many arcs for each arc of the network. */
 const SCANS_PER_ARC = 0.5;
 /** The meter is told after so many scans. */
@@ -59,25 +59,36 @@ export function raiseToMaximum(network: CoverNetwork, state: CoverFlow, meter: M
   const queued = new Uint8Array(n);
   let head = 0, waiting = 0;
   for (;;) {
-    // Global relabelling: exact labels, backwards from the demands; then the queue of active copies.
-    left.fill(NEVER);
-    right.fill(NEVER);
-    let tail = 0;
+    // Global relabelling: exact labels, backwards from the demands, until every active copy that is
+    // not cut off for good has one; then the queue of active copies.
+    let missing = 0, tail = 0, scans = 0, enough = NEVER;
     for (let v = 0; v < n; v++) {
+      left[v] = left[v] < NEVER ? NEVER : CUT_OFF;
+      right[v] = right[v] < NEVER ? NEVER : CUT_OFF;
+      if (supply[v] > 0 && left[v] === NEVER) missing++;
       if (demand[v] > 0) {
         right[v] = 1;
         reached[tail++] = v;
       }
     }
-    let scans = 0;
+    if (missing === 0) return;
     for (let at = 0; at < tail; at++) {
       const j = reached[at], next = right[j] + 1;
+      if (next > enough) {
+        // What is left is farther away, and no nearer than this.
+        for (let v = 0; v < n; v++) {
+          if (left[v] === NEVER) left[v] = next;
+          if (right[v] === NEVER) right[v] = next + 1;
+        }
+        break;
+      }
       const rowEnd = offsets[j + 1];
       scans += rowEnd - offsets[j];
       for (let p = offsets[j]; p < rowEnd; p++) {
         const i = targets[p];
         if (left[i] !== NEVER) continue;
         left[i] = next;
+        if (supply[i] > 0 && --missing === 0) enough = next;
         const end = offsets[i + 1];
         scans += end - offsets[i];
         for (let q = offsets[i]; q < end; q++) {
@@ -97,7 +108,7 @@ export function raiseToMaximum(network: CoverNetwork, state: CoverFlow, meter: M
     rightNext.set(offsets.subarray(0, n));
     head = waiting = 0;
     for (let v = 0; v < n; v++) {
-      const active = supply[v] > 0 && left[v] !== NEVER;
+      const active = supply[v] > 0 && left[v] < NEVER;
       queued[v] = active ? 1 : 0;
       if (active) queue[waiting++] = v;
     }
