@@ -65,10 +65,14 @@ const WORK_PER_ELEMENT = 500;
  * found elsewhere.
  */
 const FIRST_LIMIT = 400;
-/** Credit for each vertex and edge to begin with: the first core vertices are far from any other. */
+/** Credit for each vertex and edge to begin with: while the core is small it is far from others. */
 const FIRST_CREDIT = 50;
 /** Credit that each vertex looked at adds. */
 const MORE_CREDIT = 100;
+/** So many core vertices are found whatever the credit. */
+const SEEDS = 32;
+/** Share of all work that may go into the seeds. */
+const SEED_SHARE = 0.4;
 /** Work for growing a side, later; at first an eighth of all that is left. */
 const GROWING_LIMIT = 50_000;
 
@@ -108,6 +112,7 @@ class Growing {
   readonly #role: Uint8Array;
   readonly #queued: Uint8Array;
   readonly #proven: Uint8Array;
+  #coreCount = 0;
   #crossing = 0;
   #twisted = 0;
   /** Whether the core holds vertices that may lie in a side larger than a star. */
@@ -121,7 +126,10 @@ class Growing {
       this.#workLeft -= units;
       meter.tick(units);
     }, mayAttach);
-    if (known !== undefined) this.#search.core.set(known);
+    if (known !== undefined) {
+      this.#search.core.set(known);
+      for (const isKnown of known) this.#coreCount += isKnown;
+    }
     this.#proven = this.#search.core.slice();
     this.#role = new Uint8Array(graph.n);
     this.#queued = new Uint8Array(graph.n);
@@ -132,6 +140,7 @@ class Growing {
     const queue = new Int32Array(n);
     const later: number[] = [];
     let credit = FIRST_CREDIT * (n + this.#graph.m);
+    const leftAfterSeeds = (1 - SEED_SHARE) * this.#workLeft;
     // Roots of large degree first: they are likely to be core, and the rest is then near to it.
     for (const root of byDegree(this.#graph)) {
       if (this.#queued[root] !== 0) continue;
@@ -141,9 +150,10 @@ class Growing {
       for (let head = 0; head < tail; head++) {
         const v = queue[head];
         const before = this.#workLeft;
-        const more = Math.max(0, credit);
+        const isSeed = this.#coreCount < SEEDS && this.#workLeft > leftAfterSeeds;
+        const more = Math.max(isSeed ? this.#workLeft / 8 : 0, credit);
         if (!this.#settle(v, FIRST_LIMIT + more, 4 * FIRST_LIMIT + more)) later.push(v);
-        credit += MORE_CREDIT - (before - this.#workLeft);
+        if (!isSeed) credit += MORE_CREDIT - (before - this.#workLeft);
         for (let a = offsets[v]; a < offsets[v + 1]; a++) {
           const u = targets[a];
           if (this.#queued[u] !== 0) continue;
@@ -187,6 +197,7 @@ class Growing {
     }
     if (typeof found === "string") {
       core[v] = 1;
+      this.#coreCount++;
       this.#guessed ||= found === "barred";
       if (found === "core" && !this.#guessed) this.#proven[v] = 1;
       if (found === "twisted") this.#makeRoom(v);
@@ -199,6 +210,7 @@ class Growing {
       this.#small.push(side);
       this.#guessed ||= found.short;
       core[v] = 1;
+      this.#coreCount++;
       return true;
     }
     const crosses = side.inside.some((u) => role[u] === 1 || role[u] === 2) ||

@@ -47,8 +47,11 @@ export function reduceBlocks(start: CostGraph, meter: Meter): Reduction {
  * before has a gadget's vertex among its attachments; moving that one to an end of the gadget shows
  * that the side consists of such ends, of gadgets and of what sides there were before. Where a gadget
  * leaves an attachment out, the graph has come apart and nothing is known.
+ *
+ * @param proven length before.graph.n: what was known before the round
+ * @returns length after.graph.n, or undefined where nothing is known
  */
-function stillKnown(
+export function stillKnown(
   { before, after, blocks }: Replacing,
   proven: Uint8Array,
 ): Uint8Array | undefined {

@@ -8,6 +8,7 @@ import type { Graph } from "../graph/graph.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
 import { type Choice, chooseBlocks } from "./blocks-choose.ts";
 import type { Block, CostGraph } from "./blocks-costs.ts";
+import { stillKnown } from "./blocks.ts";
 import { colouredBlock } from "./blocks-colour.ts";
 import { replaceByGadgets } from "./gadgets-apply.ts";
 
@@ -39,11 +40,15 @@ export function blocksOf(graph: Graph, meter: Meter): BlockList {
   // For each vertex, the blocks that hang on it. Not all have gadgets with vertices.
   const hanging = new Map<number, number[]>();
   let complete = true;
+  let known: Uint8Array | undefined;
   try {
     for (;;) {
       const { ids }: CostGraph = now;
       const isItem = Uint8Array.from(ids, (id) => id < n ? 1 : 0);
-      const { blocks, separations }: Choice = chooseBlocks(now.graph, meter, { mayAttach: isItem });
+      const { blocks, separations }: Choice = chooseBlocks(now.graph, meter, {
+        mayAttach: isItem,
+        known,
+      });
       complete &&= separations?.complete ?? true;
       if (blocks.length === 0) break;
       const round = replaceByGadgets(now, blocks, meter);
@@ -71,6 +76,7 @@ export function blocksOf(graph: Graph, meter: Meter): BlockList {
         insides.push(inside);
         attachments.push(at);
       }
+      known = separations && stillKnown(round, separations.proven);
       now = round.after;
     }
   } catch (error) {
