@@ -9,6 +9,7 @@ import type { Meter } from "../run/meter.ts";
 
 /** Rows of a graph with the way back of every arc; parallel edges are allowed, loops are not. */
 export interface CoverNetwork {
+  /** Number of vertices; the cover has twice as many. */
   readonly n: number;
   /** Length n + 1: the arcs of v stand at offsets[v] … offsets[v+1]-1. */
   readonly offsets: Int32Array;
