@@ -87,8 +87,9 @@ class Searches {
   readonly #state: Int32Array | Float64Array;
   readonly #unreached: number;
   readonly #queue: MonotoneQueue;
-  /** For each search: the faces it changed and their former potentials. */
-  readonly #done: { faces: Int32Array; former: Int32Array | Float64Array }[] = [];
+  /** How to take the searches back, one record for each depth; those below `#depth` count. */
+  readonly #undo: Undo[] = [];
+  #depth = 0;
   readonly #touched: Int32Array;
 
   /**
@@ -108,7 +109,7 @@ class Searches {
   }
 
   get depth(): number {
-    return this.#done.length;
+    return this.#depth;
   }
 
   /** What the potential proves for the distance between x and its antipode. */
@@ -151,21 +152,52 @@ class Searches {
     }
     // Every face within the limit was settled with its final value, whatever the queue did.
     if (settled !== count) throw new Error("internal: the queue lost a face");
-    const faces = touched.slice(0, count);
-    const former = state instanceof Int32Array ? new Int32Array(count) : new Float64Array(count);
-    for (let i = 0; i < count; i++) {
-      const y = faces[i];
+    const { faces, former } = this.#record(count);
+    const all = faces === undefined;
+    const length = all ? former.length : count;
+    for (let i = 0; i < length; i++) {
+      const y = all ? i : touched[i], r = state[2 * y + 1];
+      if (!all) faces[i] = y;
       former[i] = state[2 * y];
+      if (r === unreached) continue;
       // a(y) + sign·(limit - r(y)).
-      state[2 * y] = sign * (within - state[2 * y + 1]);
+      state[2 * y] = sign * (within - r);
       state[2 * y + 1] = unreached;
     }
-    this.#done.push({ faces, former });
+    this.#depth++;
+  }
+
+  /** Where to note `count` former potentials: a list, or all of them if that is hardly longer. */
+  #record(count: number): Undo {
+    const all = this.#state.length / 2, old = this.#undo[this.#depth];
+    const numbers = (length: number) =>
+      this.#state instanceof Int32Array ? new Int32Array(length) : new Float64Array(length);
+    if (8 * count > all) {
+      if (old !== undefined && old.faces === undefined) return old;
+      return this.#undo[this.#depth] = { faces: undefined, former: numbers(all), count: all };
+    }
+    if (old?.faces !== undefined && old.faces.length >= count) {
+      old.count = count;
+      return old;
+    }
+    const undo = { faces: new Int32Array(2 * count), former: numbers(2 * count), count };
+    return this.#undo[this.#depth] = undo;
   }
 
   /** Takes the last search back. */
   undo(): void {
-    const { faces, former } = this.#done.pop()!;
-    for (let i = 0; i < faces.length; i++) this.#state[2 * faces[i]] = former[i];
+    const { faces, former, count } = this.#undo[--this.#depth];
+    for (let i = 0; i < count; i++) {
+      this.#state[2 * (faces === undefined ? i : faces[i])] = former[i];
+    }
   }
+}
+
+/** What a search changed. */
+interface Undo {
+  /** The faces whose former potentials stand in `former`; absent where that holds all of them. */
+  readonly faces: Int32Array | undefined;
+  readonly former: Int32Array | Float64Array;
+  /** How many entries count. */
+  count: number;
 }
