@@ -8,6 +8,7 @@ OUT.ipynb. The front end is nbclient, the one behind `jupyter nbconvert --execut
 """
 
 import json
+import logging
 import os
 import re
 import sys
@@ -28,7 +29,21 @@ def shown(cell):
             (o.get("data") and not PROGRESS.match(o["data"].get("text/plain", "")))]
 
 
+class Warnings(logging.Handler):
+    """Keeps what nbclient warns of, such as outputs it did not wait for."""
+
+    def __init__(self):
+        super().__init__(logging.WARNING)
+        self.texts = []
+
+    def emit(self, record):
+        self.texts.append(record.getMessage())
+
+
 def main(path, runs, out):
+    warnings = Warnings()
+    log = logging.getLogger("front")
+    log.addHandler(warnings)
     committed = nbformat.read(path, as_version=4)
     folder = os.path.dirname(os.path.abspath(path))
     lost = errors = stderr = 0
@@ -39,9 +54,14 @@ def main(path, runs, out):
         for cell in notebook.cells:
             if cell.cell_type == "code":
                 cell.outputs, cell.execution_count = [], None
-        client = NotebookClient(notebook, timeout=300, kernel_name="evenface",
-                                allow_errors=True, resources={"metadata": {"path": folder}})
+        # The front end's own patience (4 s by default) is not what is tested: a busy machine can
+        # hold the whole process up for longer than that.
+        client = NotebookClient(notebook, timeout=300, iopub_timeout=60, kernel_name="evenface",
+                                allow_errors=True, log=log,
+                                resources={"metadata": {"path": folder}})
         client.execute()
+        details.extend(f"run {run}: {text}" for text in warnings.texts)
+        warnings.texts.clear()
         for number, (before, after) in enumerate(zip(committed.cells, notebook.cells)):
             if before.cell_type != "code":
                 continue
