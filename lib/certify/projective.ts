@@ -51,6 +51,7 @@ export function projectiveBound(play: Play, proof: ProjectiveProof): bigint {
     total += BigInt(weight);
     divisor = greatestCommonDivisor(weight, divisor);
   }
+  if (divisor === 0) return 0n;
   const G = 2n * BigInt(divisor);
   const boundFrom = (d: bigint) => (total - BigInt(unit) * d) / G * BigInt(divisor);
   const bound = boundFrom(distance);

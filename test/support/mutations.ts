@@ -2,21 +2,27 @@
  * Honest solutions of small random instances, as JSON data, and small random changes to them: what a
  * forger would try who knows the format but has no plan.
  */
+import type { Certificate, Proof } from "../../lib/certify/certificate.ts";
 import { check } from "../../lib/certify/check.ts";
 import { toJson } from "../../lib/certify/json.ts";
 import type { Solution } from "../../lib/certify/solution.ts";
 import { type Graph, inducedSubgraph } from "../../lib/graph/graph.ts";
 import { Instance } from "../../lib/instance/instance.ts";
+import { reducePiece } from "../../lib/reduce/blocks-piece.ts";
 import { decompose } from "../../lib/reduce/decompose.ts";
 import { replaceBlocks } from "../../lib/reduce/replace-blocks.ts";
+import { Meter } from "../../lib/run/meter.ts";
 import type { Random } from "../../lib/run/random.ts";
 import { solve, type SolveOptions } from "../../lib/solve/solve.ts";
 import { bruteForce } from "../oracle/brute-force.ts";
 import { smallEvenFace } from "./even-face.ts";
 import { gridWithBlocks } from "./grid-with-blocks.ts";
+import { kernelPieces } from "./kernel-pieces.ts";
 import { hardWeights } from "./mirrored-grid.ts";
+import { proveByCases } from "./prove.ts";
 import { randomCases } from "./random-cases.ts";
 import { randomGraph, randomWeights } from "./random-graphs.ts";
+import { firstFit } from "./solutions.ts";
 import { withBlocks } from "./with-blocks.ts";
 
 /** JSON data that may be bent in any way. */
@@ -39,7 +45,15 @@ export function instanceOf(graph: Graph, weights: ArrayLike<number>): Instance {
 }
 
 /** The kinds of honest solutions, by where their proofs come from. */
-export const KINDS = ["branch", "transversal", "cases", "blocks", "projective", "lifted"] as const;
+export const KINDS = [
+  "branch",
+  "transversal",
+  "cases",
+  "blocks",
+  "replaced",
+  "projective",
+  "lifted",
+] as const;
 
 /** An honest solution of this kind; the proof of a small random instance may still be a plain one. */
 export async function honest(kind: typeof KINDS[number], random: Random): Promise<Honest> {
@@ -60,6 +74,10 @@ export async function honest(kind: typeof KINDS[number], random: Random): Promis
         nested: random.below(2) === 0,
       });
       return await solved(instanceOf(graph, hardOrPlain(graph, random)));
+    }
+    case "replaced": {
+      const { piece, chosen, proof } = replacedBlocks(random);
+      return withProof(instanceOf(piece.graph, piece.weights), chosen, proof);
     }
     case "projective": {
       const { graph } = smallEvenFace(random, 16);
@@ -108,26 +126,60 @@ async function solved(instance: Instance, options: SolveOptions = {}): Promise<H
 function byRandomCases(random: Random): Honest {
   const graph = randomGraph(random, 1 + random.below(10), 0.2 + 0.8 * random.unit());
   const instance = instanceOf(graph, randomWeights(random, graph.n, -2, 9));
-  const { chosen, weight } = bruteForce(graph, instance.weights);
-  const vertices = Array.from(instance.ids.keys());
-  const data = {
-    kind: "solution",
-    status: "optimal",
-    chosen: instance.ids.filter((_, v) => chosen[v] !== 0),
-    weight,
+  const { chosen } = bruteForce(graph, instance.weights);
+  return withProof(instance, chosen, randomCases(random, graph, 9));
+}
+
+/**
+ * Blocks replaced, and what is left proved by cases alone: such a proof goes on proving the optimum of
+ * what is left when that changes a little.
+ */
+export function replacedBlocks(random: Random) {
+  for (;;) {
+    const core = randomGraph(random, 5 + random.below(2), 0.4 + 0.5 * random.unit());
+    const { graph } = withBlocks(random, core, {
+      blocks: 1 + random.below(2),
+      size: 5,
+      nested: random.below(2) === 0,
+    });
+    for (const piece of kernelPieces(graph, randomWeights(random, graph.n, 1, 4))) {
+      const labels = Int32Array.from(piece.labels.keys());
+      const reduced = reducePiece({ ...piece, labels }, new Meter());
+      const answer = reduced?.combine(
+        reduced.pieces.map(({ graph, weights, labels }) => {
+          const { chosen, weight } = bruteForce(graph, weights);
+          return { chosen, upperBound: weight, proof: proveByCases(graph, labels) };
+        }),
+        new Meter(),
+      );
+      if (answer?.proof === undefined) continue;
+      return { piece, chosen: answer.chosen, proof: answer.proof };
+    }
+  }
+}
+
+function withProof(instance: Instance, chosen: Uint8Array, proof: Proof): Honest {
+  let bound = 0;
+  chosen.forEach((x, v) => bound += x * instance.weights[v]);
+  const certificate: Certificate = {
+    kind: "certificate",
+    version: 1,
+    fingerprint: instance.fingerprint,
     choose: [],
     leave: [],
-    certificate: {
-      kind: "certificate",
-      version: 1,
-      fingerprint: instance.fingerprint,
-      choose: [],
-      leave: [],
-      bound: weight,
-      parts: [{ vertices, bound: weight, proof: randomCases(random, graph, 9) }],
-    },
+    bound,
+    parts: [{ vertices: Array.from(instance.ids.keys()), bound, proof }],
   };
-  return { instance, text: JSON.stringify(data) };
+  const ids = instance.ids.filter((_, v) => chosen[v] !== 0);
+  return {
+    instance,
+    text: toJson(firstFit(instance, {
+      chosen: ids,
+      weight: bound,
+      upperBound: bound,
+      certificate,
+    })),
+  };
 }
 
 /** The weight of the best choice that meets what the solution says was asked; ids may repeat. */
@@ -241,7 +293,8 @@ export function mutate(random: Random, data: Bendable): void {
       list[Number(key)] = other;
       return;
     case 3:
-      if (random.below(4) === 0) holder[key] = STRANGE[random.below(STRANGE.length)];
+      if (random.below(4) > 0) return;
+      holder[key] = structuredClone(STRANGE[random.below(STRANGE.length)]);
       return;
     case 4:
       if (other !== undefined) holder[key] = structuredClone(other);
