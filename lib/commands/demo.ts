@@ -38,6 +38,7 @@ export async function run(argv: string[], io: Io): Promise<number> {
       {
         out,
         timing: noTiming !== true,
+        anatomy: true,
         rerun: "deno task demo",
         recheck:
           `deno task check ${out}/solution.json ${FOLDER}/requests.csv ${FOLDER}/conflicts.csv`,

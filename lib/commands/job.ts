@@ -13,6 +13,7 @@ import { solve } from "../mod.ts";
 import type { Displayable } from "../run/displayable.ts";
 import { InstanceError } from "../run/errors.ts";
 import type { Progress, RunOptions } from "../run/options.ts";
+import { anatomyOf } from "./anatomy.ts";
 import { writeAll } from "./files.ts";
 import { EXIT, type Io } from "./io.ts";
 
@@ -30,6 +31,8 @@ export interface JobOptions {
   readonly recheck: string;
   /** More results for the report. */
   readonly extras?: (instance: Instance, solution: Solution) => Displayable[];
+  /** True adds the anatomy: class, core and blocks. */
+  readonly anatomy?: boolean;
 }
 
 /**
@@ -57,7 +60,14 @@ export async function runJob(tables: Tables, options: JobOptions, io: Io): Promi
   }
 
   const extras = options.extras?.(instance, solution) ?? [];
-  const results = [solution, instance, ...verdict === undefined ? [] : [verdict], ...extras];
+  const anatomy = options.anatomy === true ? await anatomyOf(instance, run) : [];
+  const results = [
+    solution,
+    instance,
+    ...verdict === undefined ? [] : [verdict],
+    ...extras,
+    ...anatomy,
+  ];
   const html = await report(results, {
     rerun: options.rerun,
     options: run,

@@ -12,7 +12,7 @@ import { readSeconds, runJob } from "./job.ts";
 
 const USAGE =
   "usage: deno task solve ITEMS.csv CONFLICTS.csv --out DIR [--id COL] [--weight COL] " +
-  "[--time-limit S] [--name TEXT] [--unit TEXT] [--no-timing]";
+  "[--time-limit S] [--name TEXT] [--unit TEXT] [--anatomy] [--no-timing]";
 
 const OPTIONS = {
   ...TABLE_OPTIONS,
@@ -20,6 +20,7 @@ const OPTIONS = {
   "time-limit": { type: "string" },
   name: { type: "string" },
   unit: { type: "string" },
+  anatomy: { type: "boolean" },
   "no-timing": { type: "boolean" },
 } as const;
 
@@ -28,7 +29,7 @@ const OPTIONS = {
  *
  * @param argv items and conflicts, as paths, addresses or `-` for standard input, and options:
  *   columns of id and weight, seconds to stop after, title and unit for the report, and whether to
- *   leave the timing section out
+ *   add the instance's anatomy or leave the timing section out
  * @param io where to print
  * @returns 0 optimal; 2 bad input, every problem printed and nothing written; 3 stopped at the limit
  *   or by Ctrl-C, everything written; 1 for any other failure, nothing written
@@ -61,6 +62,7 @@ export async function run(argv: string[], io: Io): Promise<number> {
         out,
         timeLimit,
         timing: values["no-timing"] !== true,
+        anatomy: values.anatomy === true,
         rerun: again(["solve", ...argv.filter((one) => one !== "--")].map(shellQuoted).join(" ")),
         recheck: again(
           ["check", `${folder}/solution.json`, items, conflicts, ...columns].map(shellQuoted)

@@ -253,4 +253,19 @@ describe("demo and check", () => {
     expect(bad.code).toBe(2);
     expect(existsSync(join(folder, "task-bad"))).toBe(false);
   });
+
+  it("adds the anatomy to a report when asked", async () => {
+    const ring = ["a", "b", "c", "d", "e"];
+    const items = file("ring.csv", `id,weight\n${ring.map((id) => `${id},1`).join("\n")}\n`);
+    const pairs = ring.map((id, i) => `${id},${ring[(i + 1) % 5]}`);
+    const conflicts = file("ring-pairs.csv", `a,b\n${pairs.join("\n")}\n`);
+    const out = join(folder, "ring");
+    const plain = await call(runSolve, [items, conflicts, "--out", out]);
+    expect(plain.code).toBe(0);
+    expect(readFileSync(join(out, "report.html"), "utf8")).not.toContain("odd cycle packing");
+    expect((await call(runSolve, [items, conflicts, "--out", out, "--anatomy"])).code).toBe(0);
+    const report = readFileSync(join(out, "report.html"), "utf8").toLowerCase();
+    expect(report).toContain("odd cycle");
+    expect(report).toContain("core");
+  });
 });
