@@ -102,11 +102,14 @@ async function inLab(lab: Lab, browser: Browser, notebook: string): Promise<stri
       `cell ${i + 1}: ${cells[i].shown} outputs, expected ${wanted}`,
     );
   });
-  const height = await browser.ask(
-    `Math.max(...[...document.querySelectorAll('.jp-Cell')]
-      .map((cell) => cell.getBoundingClientRect().bottom))`,
-  );
+  const height = await browser.ask(`(async () => {
+    for (const one of document.querySelectorAll('.jp-NotebookPanel *')) one.scrollTop = 0;
+    await new Promise((resolve) => setTimeout(resolve, 500));
+    return Math.max(...[...document.querySelectorAll('.jp-Cell')]
+      .map((cell) => cell.getBoundingClientRect().bottom));
+  })()`);
   await browser.resize(1200, Math.ceil(Number(height)) + 60);
+  await browser.ask("new Promise((resolve) => setTimeout(resolve, 500))");
   await browser.photograph(`${OUT}/jupyterlab.png`);
   return `${cells.length} cells, ${outputs} outputs, screenshot out/front/jupyterlab.png`;
 }
