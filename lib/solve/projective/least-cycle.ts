@@ -91,6 +91,8 @@ function runSearches(
     if (!(error instanceof Interrupted) || cost === Infinity) throw error;
     return { cost, atLeast: bounds.reduce((a, b) => Math.min(a, b), cost), crossed, plan };
   }
+  const open = bounds.findIndex((bound) => !(bound > cost - step));
+  if (open >= 0) throw new Error(`internal: source ${open} is proved to ${bounds[open]} only`);
   return { cost, atLeast: cost, crossed, plan };
 
   /** Proves the sources from low to high - 1. The depth of the recursion is logarithmic. */
@@ -117,6 +119,7 @@ function runSearches(
     plan.depths.push(potential.depth);
     plan.limits.push(potential.limit);
     potential.advance();
+    noteProven(middle, middle + 1);
     prove(low, middle);
     prove(middle + 1, high);
     potential.retreat();

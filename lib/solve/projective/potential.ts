@@ -93,6 +93,9 @@ export class Potential {
    * @throws {Interrupted} when the meter runs out; the potential is of no further use then
    */
   search(x: number, most: number, beyond: number, meter: Meter): number {
+    if (!this.wide && most !== Infinity && most > NARROW_LIMIT) {
+      throw new TooWide(`a limit of ${most} passes 32 bits`);
+    }
     const backward = this.depth % 2 === 1;
     const { offsets, entries } = backward ? this.#into : this.#out;
     const state = this.#state, touched = this.#touched, queue = this.queue;
