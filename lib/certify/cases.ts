@@ -1,8 +1,8 @@
 /**
  * Checks a tree of cases. The tree is walked once, in preorder and without recursion; vertices that
  * leave and multipliers that change are logged and put back on the way up, so the cost is the size of
- * the proof plus the degrees of the vertices branched on, the lengths of the terms whose multipliers
- * change, and a look-up for each two vertices of a clique.
+ * the proof plus, for each vertex branched on, its degree and the terms with it, the length of each
+ * term whose multiplier changes, and a look-up for each two vertices of a clique.
  */
 import type { CaseNode, CasesProof, Numbers } from "./certificate.ts";
 import { type Play, requireEdge, requireMultiplier, requireVertex } from "./play.ts";

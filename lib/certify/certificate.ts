@@ -129,7 +129,8 @@ export interface BlocksProof {
   readonly order?: Numbers;
   /**
    * Disjoint parts of the end graph that hold all its vertices of positive weight, each with a bound
-   * in the weights of the end graph, which are sums of doubled costs.
+   * in the weights of the end graph, which are sums of doubled costs. At most 16 proofs of this rule
+   * stand in one another.
    */
   readonly parts: readonly CertificatePart[];
 }
