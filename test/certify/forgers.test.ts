@@ -85,7 +85,7 @@ describe("a forger with a plan never gets below the optimum", () => {
 
   it("by cases: random terms and trees, all sorts of slips, multipliers improved", () => {
     const random = new Random(201), sums = tally();
-    for (let run = 0; run < 700; run++) {
+    for (let run = 0; run < 450; run++) {
       const graph = randomGraph(random, 3 + random.below(4), 0.3 + 0.7 * random.unit());
       const weights = randomWeights(random, graph.n, -1, 5);
       const some = () => random.shuffle(Array.from(weights.keys()));
@@ -134,13 +134,13 @@ describe("a forger with a plan never gets below the optimum", () => {
       );
     }
 
-    expect(sums.started).toBeGreaterThan(300);
-    expect(sums.tight).toBeGreaterThan(100);
+    expect(sums.started).toBeGreaterThan(200);
+    expect(sums.tight).toBeGreaterThan(50);
   });
 
   it("by blocks: any set with any attachments, any gadget, costs improved", () => {
     const random = new Random(202), sums = tally();
-    for (let run = 0; run < 500; run++) {
+    for (let run = 0; run < 350; run++) {
       const graph = randomConnectedGraph(random, 3 + random.below(5), random.below(6));
       const weights = randomWeights(random, graph.n, 0, 5);
       const edges = Array.from(graph.tails, (u, e) => [u, graph.heads[e]]);
@@ -186,8 +186,8 @@ describe("a forger with a plan never gets below the optimum", () => {
       count(sums, forge(graph, weights, start, 50, change, (p) => restated(graph, weights, p)));
     }
 
-    expect(sums.started).toBeGreaterThan(250);
-    expect(sums.tight).toBeGreaterThan(100);
+    expect(sums.started).toBeGreaterThan(200);
+    expect(sums.tight).toBeGreaterThan(70);
   });
 
   it("by blocks, from honest proofs: what the gadgets cost raised as far as it is let", () => {
@@ -213,7 +213,7 @@ describe("a forger with a plan never gets below the optimum", () => {
 
   it("by embeddings: any rotations, few sources, any searches, the distance raised", () => {
     const random = new Random(203), sums = tally();
-    for (let run = 0; run < 900; run++) {
+    for (let run = 0; run < 600; run++) {
       const graph = randomConnectedGraph(random, 3 + random.below(4), 1 + random.below(4));
       const costs = Array.from(graph.tails, () => random.below(3) * (1 + random.below(3)));
       const weights = new Float64Array(graph.n);
