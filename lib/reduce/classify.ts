@@ -118,14 +118,14 @@ export class Classification extends Displayable implements ClassificationData {
           : `, and leaving out ${plural(k, "item")} makes the conflicts two-sided, so the best ` +
             "choice is found exactly by a few flow computations.");
     }
-    const rings = lower === upper ? `exactly ${lower}` : `at least ${lower}`;
-    if (k.upper <= 12) {
-      return `Up to ${rings.replace("exactly ", "")} odd rings of conflicts are disjoint, and ` +
-        `leaving out ${plural(k, "item")} makes the conflicts two-sided, so the best choice is ` +
-        "found exactly by trying what these items do.";
-    }
     if (lower <= 1) {
       return "It was not settled in the time allowed whether two odd rings of conflicts are disjoint.";
+    }
+    const rings = lower === upper ? `exactly ${lower}` : `at least ${lower}`;
+    if (k.upper <= 12) {
+      return `There are ${rings} disjoint odd rings of conflicts, and ` +
+        `leaving out ${plural(k, "item")} makes the conflicts two-sided, so the best choice is ` +
+        "found exactly by trying what these items do.";
     }
     const general = this.components.filter((c) => c.kind === "general").length;
     return `There are ${rings} disjoint odd rings of conflicts` +
