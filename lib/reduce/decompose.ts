@@ -1,15 +1,11 @@
 /** Core and blocks of an instance: its anatomy, for people to read and for `replaceBlocks`. */
-import { type Graph, graphFromEdges } from "../graph/graph.ts";
+import { graphFromEdges } from "../graph/graph.ts";
 import type { Instance } from "../instance/instance.ts";
-import { canWorkAside, type Job, runAside } from "../run/aside.ts";
-import { Meter } from "../run/meter.ts";
-import type { RunOptions } from "../run/options.ts";
+import { hereOrAside, type Job } from "../run/aside.ts";
+import { checkRunOptions, type RunOptions } from "../run/options.ts";
 import type { Block } from "./blocks-costs.ts";
 import { type Anatomy, anatomy } from "./decompose-graph.ts";
 import { count, type DecomposedComponent, Decomposition, type ItemBlock } from "./decomposition.ts";
-
-/** Vertices and edges above which a worker is used unless the caller wants none. */
-const SIZE_HERE = 50_000;
 
 /**
  * Splits each component of an instance into its core and the bipartite blocks that hang on at most
@@ -44,13 +40,20 @@ export async function decompose(
   instance: Instance,
   run: RunOptions = {},
 ): Promise<Decomposition> {
-  const meter = new Meter(run);
+  checkRunOptions(run);
+  const began = performance.now();
   const { graph } = instance;
-  const aside = run.workers !== 0 && graph.n + graph.m > SIZE_HERE && canWorkAside();
-  const components = await (aside ? anatomyAside(graph, run) : anatomy(graph, meter));
+  const { n, m, tails, heads } = graph;
+  const components = await hereOrAside(
+    "decompose",
+    n + m,
+    run,
+    (meter) => anatomy(graph, meter),
+    (): Posted => ({ n, tails, heads }),
+  );
   return new Decomposition({
     components: components.map((component) => named(instance, component)),
-    elapsedMs: meter.elapsedMs,
+    elapsedMs: performance.now() - began,
     instance: {
       name: instance.name,
       items: instance.size,
@@ -65,16 +68,6 @@ interface Posted {
   readonly n: number;
   readonly tails: Int32Array;
   readonly heads: Int32Array;
-}
-
-async function anatomyAside({ n, tails, heads }: Graph, run: RunOptions): Promise<Anatomy[]> {
-  const posted: Posted = { n, tails, heads };
-  return await runAside(
-    new URL("../worker.ts", import.meta.url),
-    "decompose",
-    posted,
-    run,
-  ) as Anatomy[];
 }
 
 /** The worker's side of `decompose`. */
