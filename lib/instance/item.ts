@@ -6,7 +6,7 @@ export type Weight = number | string | bigint;
 /** One row of the items table; further columns are kept and never looked at. */
 export type Item = { id: string; weight: Weight } & Record<string, unknown>;
 
-/** A row as any table library gives it. */
+/** A row as table libraries give it. */
 export type Row = Readonly<Record<string, unknown>>;
 
 /** Two items that cannot both be chosen, with the reasons later explanations quote. */

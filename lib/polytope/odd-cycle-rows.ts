@@ -5,6 +5,7 @@
  * optimization", 1988, chapter 9; written from memory).
  */
 import type { Graph } from "../graph/graph.ts";
+import { HeapQueue } from "../graph/heap.ts";
 import type { Meter } from "../run/meter.ts";
 
 /** Arcs scanned in one separation, at most so many times n + m. */
@@ -38,17 +39,18 @@ export function violatedOddCycles(
   const covered = new Uint8Array(n);
   const found: { cycle: number[]; slack: number }[] = [];
   const touched: number[] = [];
+  const queue = new HeapQueue();
   const fractional = (v: number): boolean => x[v] > 1e-6 && x[v] < 1 - 1e-6;
   for (let root = 0; root < n && patience > 0; root++) {
     if (covered[root] !== 0 || !fractional(root)) continue;
     // Nodes of the cover: v and n + v. The walk from root to its copy.
-    const heap = new Heap(dist);
+    queue.clear();
     dist[root] = 0;
     touched.push(root);
-    heap.push(root);
+    queue.push(0, root);
     let reached = false, scanned = 1;
-    while (heap.size > 0) {
-      const at = heap.pop();
+    for (let at = queue.pop(); at >= 0; at = queue.pop()) {
+      if (queue.key > dist[at]) continue;
       if (at === n + root) {
         reached = true;
         break;
@@ -69,7 +71,7 @@ export function violatedOddCycles(
         if (dist[to] === Infinity) touched.push(to);
         dist[to] = next;
         parent[to] = at;
-        heap.push(to);
+        queue.push(next, to);
       }
     }
     meter.tick(5 * scanned);
@@ -112,59 +114,4 @@ export function simpleOddCycle(walk: readonly number[]): number[] {
     while (stack.length > at + 1) place.delete(stack.pop() as number);
   }
   throw new Error("a closed walk of odd length contains an odd cycle");
-}
-
-/** A binary heap of nodes by distance; a node may stand in it more than once. */
-class Heap {
-  readonly #dist: Float64Array;
-  readonly #nodes: number[] = [];
-  readonly #keys: number[] = [];
-
-  constructor(dist: Float64Array) {
-    this.#dist = dist;
-  }
-
-  get size(): number {
-    return this.#nodes.length;
-  }
-
-  push(node: number): void {
-    const nodes = this.#nodes, keys = this.#keys, key = this.#dist[node];
-    let i = nodes.length;
-    nodes.push(node);
-    keys.push(key);
-    while (i > 0) {
-      const up = (i - 1) >> 1;
-      if (keys[up] < key || (keys[up] === key && nodes[up] <= node)) break;
-      nodes[i] = nodes[up];
-      keys[i] = keys[up];
-      i = up;
-    }
-    nodes[i] = node;
-    keys[i] = key;
-  }
-
-  pop(): number {
-    const nodes = this.#nodes, keys = this.#keys;
-    const top = nodes[0];
-    const node = nodes.pop() as number, key = keys.pop() as number;
-    if (nodes.length === 0) return top;
-    let i = 0;
-    for (;;) {
-      let down = 2 * i + 1;
-      if (down >= nodes.length) break;
-      const other = down + 1;
-      if (
-        other < nodes.length &&
-        (keys[other] < keys[down] || (keys[other] === keys[down] && nodes[other] < nodes[down]))
-      ) down = other;
-      if (key < keys[down] || (key === keys[down] && node <= nodes[down])) break;
-      nodes[i] = nodes[down];
-      keys[i] = keys[down];
-      i = down;
-    }
-    nodes[i] = node;
-    keys[i] = key;
-    return top;
-  }
 }

@@ -1,6 +1,6 @@
 /**
- * The half-integral kernel: an optimum of the relaxation max w·x, Mx <= 1, x >= 0 in halves, with as
- * few halves as any optimum has. Where it is 0 or 1, some heaviest stable set agrees (G. L. Nemhauser
+ * The half-integral kernel: an optimum of the relaxation max w·x, Mx <= 1, x >= 0 in halves, with the
+ * fewest halves that an optimum has. Where it is 0 or 1, some heaviest stable set agrees (G. L. Nemhauser
  * and L. E. Trotter, "Vertex packings: structural properties and algorithms", Math. Programming 8,
  * 1975). Costs one maximum flow, everything else is O(n + m); no recursion.
  */

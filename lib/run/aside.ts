@@ -21,7 +21,7 @@ export interface Order {
   readonly reports: boolean;
 }
 
-/** What the worker sends back: any number of reports or notices, then a result or a failure. */
+/** What the worker sends back: reports and notices, as many as it likes, then a result or a failure. */
 export type Reply =
   | { readonly progress: Progress }
   | { readonly notice: unknown }

@@ -341,7 +341,7 @@ export class RelaxationSearch {
       const left = this.#costs.mean(1, v, this.#weights[v] / this.#scale / 4) * x;
       listed.push({ v, score: branchScore(chosen, left) });
     }
-    // The point is integral but the bound not closed (rounding, or HiGHS failed): any free vertex.
+    // The point is integral but the bound not closed (rounding, or HiGHS failed): take a free vertex, whichever.
     if (listed.length === 0) return this.#state.indexOf(FREE);
     listed.sort((a, b) => b.score - a.score || a.v - b.v);
     if (point === undefined) return listed[0].v;

@@ -37,7 +37,7 @@ export function sourceCurve(
   return shortest(graph, dual, around, few[few.length >> 1], meter);
 }
 
-/** A walk with as few faces as any from this face to its antipode. O(m) time. */
+/** A walk with the fewest faces from this face to its antipode. O(m) time. */
 function fewestFaces({ pairs, out, into }: DirectedDual, root: number, meter: Meter): Int32Array {
   const from = new Int32Array(2 * pairs).fill(-1), queue = new Int32Array(2 * pairs);
   from[root] = root;
