@@ -173,16 +173,11 @@ export interface ProjectiveProof {
    * the darts of this vertex. On the other sheet of the double cover the rotation is the mirror image.
    */
   readonly rotation: Numbers;
-  /** Darts whose faces, on the left when lifted to sheet 0, meet every one-sided cycle of the dual. */
+  /**
+   * A closed one-sided walk from face to face: for each face a dart that has it on the left when lifted
+   * to sheet 0. Consecutive faces share an edge, and so do the last one and the antipode of the first.
+   */
   readonly sources: Numbers;
   /** The cost of a least one-sided directed cycle of the dual, in units. */
   readonly distance: number;
-  /**
-   * The searches in preorder of a tree: the source (its number in `sources`) each serves, …
-   */
-  readonly starts: Numbers;
-  /** … how deep it stands in the tree, roots at 0, … */
-  readonly depths: Numbers;
-  /** … and the largest reduced distance it settles, in units. */
-  readonly limits: Numbers;
 }

@@ -19,28 +19,25 @@ import type { InnerGraph } from "./projective-graph.ts";
 import { Rejected } from "./rejected.ts";
 
 /**
- * The faces of the sphere are 0 … 2·pairs - 1, swapping the sheets takes x to x ^ 1. Each edge of H
- * gives two dual arcs that are swapped; they are stored for even faces only.
+ * The faces of the sphere are 0 … 2·pairs - 1, swapping the sheets takes x to x ^ 1. An edge of the
+ * cover and the dual arc across it are called by the dart they lift: from (v,0) to (u,1), for a dart
+ * from v to u. Swapping the sheets takes an arc to that of the reverse dart.
  */
 export interface SphereDual {
   readonly pairs: number;
-  /** Length 2m: the face on the left of each dart lifted to sheet 0. */
+  /** Length 2m: the face on the left of each dart lifted to sheet 0, where its arc leads. */
   readonly left: Int32Array;
-  /** The arcs out of the even faces. */
-  readonly out: DualArcs;
-  /** The arcs into the even faces. */
-  readonly into: DualArcs;
-}
-
-/** The arcs at face 2k are those from offsets[k] to offsets[k+1]-1. */
-export interface DualArcs {
-  /** Length pairs + 1. */
+  /** Length 2m: the face where the arc of each dart comes from. */
+  readonly right: Int32Array;
+  /** Length pairs + 1, see `out`. */
   readonly offsets: Int32Array;
-  /**
-   * Length 2m: for arc i of an even face the face at its other end at 2i, its cost at 2i + 1. In 32
-   * bits where all costs fit.
-   */
-  readonly entries: Int32Array | Float64Array;
+  /** Length m: the darts whose arcs leave face 2k are out[offsets[k]] … out[offsets[k+1]-1]. */
+  readonly out: Int32Array;
+  /** Length 2m: the edge of each dart, edges being numbered in order of their first dart. */
+  readonly edgeOf: Int32Array;
+  /** Length 2m: the dart that follows counterclockwise, and the one before. */
+  readonly next: Int32Array;
+  readonly previous: Int32Array;
 }
 
 /**
@@ -48,31 +45,30 @@ export interface DualArcs {
  *
  * @param inner H, connected and not bipartite
  * @param rotation length 2m, as in `ProjectiveProof`
- * @param costs length m, edges in order of their first dart
  * @throws {Rejected} when it is no rotation, or the surface is no sphere
  */
-export function sphereDual(
-  inner: InnerGraph,
-  rotation: Numbers,
-  costs: Float64Array,
-): SphereDual {
+export function sphereDual(inner: InnerGraph, rotation: Numbers): SphereDual {
   const { offsets, targets, reverse } = inner;
   const n = offsets.length - 1, darts = targets.length;
   const { next, previous } = requireRotation(inner, rotation);
-  // Faces are traced in breadth-first order, so that neighbours are near in memory.
-  const left = new Int32Array(darts).fill(-1), queue = new Int32Array(darts);
+  // Faces are traced in breadth-first order, so that neighbours are near in memory. Around each, arcs
+  // in and out take turns.
+  const left = new Int32Array(darts).fill(-1);
+  const into = new Int32Array(darts / 2), out = new Int32Array(darts / 2);
+  const ends = new Int32Array(darts / 2 + 1);
   let pairs = 0, tail = 0;
   const trace = (start: number): void => {
-    for (let d = start; left[d] < 0; d = previous[reverse[next[reverse[d]]]]) {
+    for (let d = start; left[d] < 0; d = previous[out[tail++]]) {
       left[d] = 2 * pairs;
       left[reverse[d]] = 2 * pairs + 1;
-      queue[tail++] = d;
+      into[tail] = d;
+      out[tail] = reverse[next[reverse[d]]];
     }
-    pairs++;
+    ends[++pairs] = tail;
   };
   trace(0);
   for (let head = 0; head < tail; head++) {
-    const d = queue[head];
+    const d = into[head];
     if (left[next[d]] < 0) trace(next[d]);
     if (left[previous[d]] < 0) trace(previous[d]);
   }
@@ -90,24 +86,11 @@ export function sphereDual(
       if (targets[d] > v) edgeOf[d] = edgeOf[reverse[d]] = e++;
     }
   }
-  const narrow = costs.every((cost) => cost < 2 ** 31);
-  // Around (v,0) the arcs go counterclockwise: across d from the corner before d to the one after.
-  const arcs = (near: (d: number) => number, far: (d: number) => number): DualArcs => {
-    const at = new Int32Array(pairs + 1);
-    const entries = narrow ? new Int32Array(darts) : new Float64Array(darts);
-    for (let d = 0; d < darts; d++) if ((near(d) & 1) === 0) at[(near(d) >> 1) + 1]++;
-    for (let k = 0; k < pairs; k++) at[k + 1] += at[k];
-    const fill = at.slice();
-    for (let d = 0; d < darts; d++) {
-      if ((near(d) & 1) !== 0) continue;
-      const a = fill[near(d) >> 1]++;
-      entries[2 * a] = far(d);
-      entries[2 * a + 1] = costs[edgeOf[d]];
-    }
-    return { offsets: at, entries };
-  };
-  const before = (d: number) => left[previous[d]], after = (d: number) => left[d];
-  return { pairs, left, out: arcs(before, after), into: arcs(after, before) };
+  // Around (v,0) the arcs go counterclockwise: across d from the corner before d to the corner after it.
+  const right = new Int32Array(darts);
+  for (let d = 0; d < darts; d++) right[d] = left[previous[d]];
+  const rows = ends.slice(0, pairs + 1);
+  return { pairs, left, right, offsets: rows, out, edgeOf, next, previous };
 }
 
 /** The rotation as a permutation of the darts, and its inverse. @throws {Rejected} */
@@ -134,38 +117,4 @@ function requireRotation({ offsets, vertices, targets }: InnerGraph, rotation: N
     }
   }
   return { next, previous };
-}
-
-/**
- * Checks that every one-sided cycle of the dual passes a source: without the sources no face of the
- * sphere is connected to its antipode, whatever the direction of the arcs.
- *
- * @param sources faces; their antipodes are left out with them
- * @throws {Rejected} naming nothing but the fact: the sources miss a one-sided cycle
- */
-export function requireMeetsOneSided(dual: SphereDual, sources: Int32Array): void {
-  const { pairs, out, into } = dual;
-  // For each pair the lift that the search has met, 1 + its parity; 3 for sources.
-  const met = new Uint8Array(pairs), queue = new Int32Array(pairs);
-  for (let i = 0; i < sources.length; i++) met[sources[i] >> 1] = 3;
-  for (let root = 0; root < pairs; root++) {
-    if (met[root] !== 0) continue;
-    let tail = 1;
-    queue[0] = 2 * root;
-    met[root] = 1;
-    for (let head = 0; head < tail; head++) {
-      const x = queue[head], row = x >> 1;
-      for (const { offsets, entries } of [out, into]) {
-        for (let a = offsets[row]; a < offsets[row + 1]; a++) {
-          const y = entries[2 * a] ^ (x & 1), lift = 1 + (y & 1);
-          if (met[y >> 1] === 0) {
-            met[y >> 1] = lift;
-            queue[tail++] = y;
-          } else if (met[y >> 1] === 3 - lift) {
-            throw new Rejected("projective: the sources miss a one-sided cycle of the dual");
-          }
-        }
-      }
-    }
-  }
 }

@@ -1,6 +1,6 @@
 /**
- * Checks a proof by an even-face embedding, in O(m) time and what its searches take (one Dijkstra
- * search on part of the sphere for each entry of `starts`).
+ * Checks a proof by an even-face embedding, in O(m) time and what the distances of its sources take,
+ * see projective-sources.ts.
  *
  * Why it proves a bound. Let x be a stable set of H and y(e) = 1 - x(u) - x(v) >= 0 the slack of each
  * edge. As Mᵀc = 2w, twice the weight of x is c(E) - c·y, and c(E) = w(V).
@@ -22,15 +22,16 @@
 import type { ProjectiveProof } from "./certificate.ts";
 import { type Play, requireMultiplier } from "./play.ts";
 import { type InnerGraph, innerGraph } from "./projective-graph.ts";
-import { requireMeetsOneSided, sphereDual } from "./projective-dual.ts";
-import { provenDistances } from "./projective-searches.ts";
+import { sphereDual } from "./projective-dual.ts";
+import { provenDistances } from "./projective-sources.ts";
+import { requireWalk } from "./projective-walk.ts";
 import { Rejected } from "./rejected.ts";
 
 /**
  * The bound a proof by an even-face embedding proves.
  *
  * @param play the graph and the vertices in play
- * @param proof costs, embedding, sources and searches
+ * @param proof costs, embedding, sources and distance
  * @returns the bound above, in scaled units
  * @throws {Rejected} naming the first thing that is wrong
  */
@@ -38,13 +39,13 @@ export function projectiveBound(play: Play, proof: ProjectiveProof): bigint {
   const inner = innerGraph(play);
   const unit = requireMultiplier(proof.unit, "projective, unit");
   if (unit < 1) throw new Rejected("projective, unit: expected an integer >= 1, got 0");
-  const costs = requireCosts(play, inner, proof, unit);
-  const dual = sphereDual(inner, proof.rotation, costs);
-  const sources = requireSources(proof, dual.left);
-  requireMeetsOneSided(dual, sources);
-  const proven = provenDistances(dual, sources, proof);
+  const { costs, load } = requireCosts(play, inner, proof, unit);
+  const dual = sphereDual(inner, proof.rotation);
+  const walk = requireWalk(inner, dual, proof, load);
+  const claimed = requireMultiplier(proof.distance, "projective, distance");
+  const proven = provenDistances(inner, dual, costs, load, walk, claimed);
 
-  const distance = BigInt(requireMultiplier(proof.distance, "projective, distance"));
+  const distance = BigInt(claimed);
   let total = 0n, divisor = 0;
   for (let v = 0; v < inner.vertices.length; v++) {
     const weight = play.weights[inner.vertices[v]];
@@ -60,7 +61,7 @@ export function projectiveBound(play: Play, proof: ProjectiveProof): bigint {
   if (boundFrom(BigInt(proven[weakest])) > bound) {
     throw new Rejected(
       `projective: the distance ${distance} is not proved at source ${weakest}, ` +
-        `where the searches prove ${proven[weakest]}`,
+        `where the tree of paths proves ${proven[weakest]}`,
     );
   }
   return bound;
@@ -71,7 +72,7 @@ function requireCosts(
   inner: InnerGraph,
   proof: ProjectiveProof,
   unit: number,
-): Float64Array {
+): { costs: Float64Array; load: Float64Array } {
   const { vertices, offsets, targets } = inner;
   const m = targets.length / 2;
   if (proof.costs.length !== m) {
@@ -104,22 +105,7 @@ function requireCosts(
       );
     }
   }
-  return costs;
-}
-
-/** The faces of the sources on the sphere. */
-function requireSources(proof: ProjectiveProof, left: Int32Array): Int32Array {
-  const faces = new Int32Array(proof.sources.length);
-  for (let i = 0; i < faces.length; i++) {
-    const dart = proof.sources[i];
-    if (!Number.isInteger(dart) || dart < 0 || dart >= left.length) {
-      throw new Rejected(
-        `projective, source ${i}: expected a dart from 0 to ${left.length - 1}, got ${dart}`,
-      );
-    }
-    faces[i] = left[dart];
-  }
-  return faces;
+  return { costs, load };
 }
 
 function greatestCommonDivisor(a: number, b: number): number {

@@ -39,11 +39,7 @@ export function requireShape(proof: Proof): void {
         requireLists(block, ["inside", "attachments", "ends", "doubled"], `block ${b}`)
       );
     case "projective":
-      return requireLists(
-        proof,
-        ["costs", "rotation", "sources", "starts", "depths", "limits"],
-        "projective",
-      );
+      return requireLists(proof, ["costs", "rotation", "sources"], "projective");
   }
 }
 

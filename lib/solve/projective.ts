@@ -6,7 +6,6 @@
  * memory). Recognition, dual and lifting take near-linear time; projective/least-cycle.ts says what
  * the searches take.
  */
-import type { ProjectiveProof } from "../certify/certificate.ts";
 import type { Graph } from "../graph/graph.ts";
 import { evenFaceEmbedding } from "../parity/even-face.ts";
 import type { NoEvenFace } from "../parity/even-face-result.ts";
@@ -16,7 +15,10 @@ import { directedDual } from "./projective/directed-dual.ts";
 import { leastOneSidedCycle } from "./projective/least-cycle.ts";
 import { stableSetOfCycle } from "./projective/lift.ts";
 import { proofOf } from "./projective/proof.ts";
-import { sourceCurve } from "./projective/source-curve.ts";
+import { sourceWalk } from "./projective/source-walk.ts";
+
+/** What the dual arcs around all vertices may cost together: sums of distances stay exact. */
+const MOST_AROUND = 2 ** 51;
 
 /**
  * The engine for even-face embeddings.
@@ -27,12 +29,16 @@ import { sourceCurve } from "./projective/source-curve.ts";
  * @throws {Interrupted} when the meter runs out before there is any solution
  */
 export function solveProjective(piece: Piece, meter: Meter): Solved | Declined {
-  const { graph, doubledCosts } = piece;
+  const { graph, weights, doubledCosts } = piece;
   if (doubledCosts === undefined) {
     return { status: "declined", reason: "it is not a component of a half-integral kernel" };
   }
   if (hasParallelEdges(graph)) {
     return { status: "declined", reason: "it has parallel edges" };
+  }
+  const { around } = inUnits(graph, weights, doubledCosts);
+  if (!(around.reduce((sum, cost) => sum + cost, 0) <= MOST_AROUND)) {
+    return { status: "declined", reason: "its costs are too large to add up distances exactly" };
   }
   meter.report("even-face embedding", { done: 0, total: 1 });
   const embedding = evenFaceEmbedding(graph, meter, { witness: false });
@@ -57,9 +63,9 @@ export function solveEmbedded(
 ): Solved {
   const { graph, weights } = piece;
   const { unit, step, costs, around } = inUnits(graph, weights, doubledCosts);
-  const dual = directedDual(graph, next, costs);
-  const curve = sourceCurve(graph, dual, around, meter);
-  const cycle = leastOneSidedCycle(dual, curve, step, meter);
+  const dual = directedDual(next);
+  const walk = sourceWalk(graph, dual, around, meter);
+  const cycle = leastOneSidedCycle(graph, dual, costs, walk, step, meter);
   const chosen = stableSetOfCycle(graph, cycle.crossed);
 
   let total = 0, weight = 0;
@@ -70,8 +76,8 @@ export function solveEmbedded(
   const figures = {
     faces: dual.pairs,
     slack: unit * cycle.cost / 2,
-    sources: curve.faces.length,
-    searches: cycle.plan.sources.length,
+    sources: walk.faces.length,
+    moves: cycle.moves,
   };
   // Clamping may gain where the cycle is not a least one.
   if (2 * weight < total - unit * cycle.cost) throw mismatch();
@@ -82,7 +88,7 @@ export function solveEmbedded(
   }
   // Every stable set weighs at most (w(V) - cost) / 2, and this one must reach it.
   if (2 * weight !== total - unit * cycle.cost) throw mismatch();
-  const proof: ProjectiveProof = proofOf(piece, next, unit, costs, dual, curve, cycle);
+  const proof = proofOf(piece, next, unit, costs, dual, walk.faces, cycle.cost);
   return { status: "optimal", chosen, weight, upperBound: weight, proof, figures };
 
   function mismatch(): Error {

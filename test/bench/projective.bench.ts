@@ -29,7 +29,7 @@ export interface ProjectiveRow {
   readonly check: number;
   /** (kernel + engine + check) / kernel. */
   readonly ratio: number;
-  readonly searches: number;
+  readonly moves: number;
   /** HiGHS on edge rows; absent where it was not run. */
   readonly highs?: number;
   /** What HiGHS ended with. */
@@ -84,7 +84,7 @@ export async function projectiveBench(
   return rows;
 }
 
-type Timed = Pick<ProjectiveRow, "weight" | "kernel" | "engine" | "check" | "searches">;
+type Timed = Pick<ProjectiveRow, "weight" | "kernel" | "engine" | "check" | "moves">;
 
 function timed(graph: Graph, weights: Float64Array): Timed {
   const started = performance.now();
@@ -113,7 +113,7 @@ function timed(graph: Graph, weights: Float64Array): Timed {
     kernel,
     engine,
     check,
-    searches: Number(answer.figures.searches),
+    moves: Number(answer.figures.moves),
   };
 }
 
@@ -143,7 +143,7 @@ async function highsOn(
   };
 }
 
-const HEAD = "        n    kernel    engine     check  ratio  searches" +
+const HEAD = "        n    kernel    engine     check  ratio     moves" +
   "     HiGHS  HiGHS/(kernel+engine)   peak MB  weight (HiGHS)";
 
 /** One line of the table as text. */
@@ -165,7 +165,7 @@ function lineOf(row: ProjectiveRow): string {
     ms(row.engine, 9),
     ms(row.check, 9),
     row.ratio.toFixed(2).padStart(6),
-    String(row.searches).padStart(9),
+    String(row.moves).padStart(9),
     ms(row.highs, 9),
     factor.padStart(22),
     row.peakMegabytes.toFixed(0).padStart(9),

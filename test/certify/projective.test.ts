@@ -130,7 +130,7 @@ describe("projectiveBound", () => {
 
   it("rejects a distance that is too large, and proves less from one too small", () => {
     expect(verdict(base, (p) => p.distance += step)).toMatch(
-      /^projective: the distance \d+ is not proved at source \d+, where the searches prove \d+$/,
+      /^projective: the distance \d+ is not proved at source \d+, where the tree of paths proves \d+$/,
     );
     expect(verdict(base, (p) => p.distance -= step)).toBe(weight + 1);
     expect(verdict(base, (p) => p.distance = -step)).toMatch(
@@ -138,45 +138,27 @@ describe("projectiveBound", () => {
     );
   });
 
-  it("rejects sources that miss a one-sided cycle, whichever is left out", () => {
-    for (let i = 0; i < proof.sources.length; i++) {
-      const without = (p: Draft) => {
-        p.sources[i] = p.sources[(i + 1) % p.sources.length];
-      };
-      expect(verdict(base, without)).toBe(
-        "projective: the sources miss a one-sided cycle of the dual",
+  it("rejects sources that are no one-sided walk, whichever is left out or in another place", () => {
+    const broken = /^projective: the last source shares no edge with the antipode of the first$/;
+    const count = proof.sources.length;
+    expect(count).toBeGreaterThan(3);
+    for (let i = 0; i < count; i++) {
+      expect(verdict(base, (p) => p.sources[i] = p.sources[(i + 1) % count])).toMatch(
+        /^projective, source \d+: its face or the antipode comes twice$/,
+      );
+      expect(verdict(base, (p) => p.sources.splice(i, 1))).toMatch(
+        i > 0 && i < count - 1 ? /^projective, source \d+: its face shares no edge/ : broken,
       );
     }
+    expect(verdict(base, (p) => p.sources.push(p.sources.shift()!))).toMatch(
+      /^projective, source \d+: its face shares no edge with the one before$/,
+    );
+    expect(verdict(base, (p) => p.sources.reverse())).toBe(weight);
+    expect(verdict(base, (p) => p.sources.splice(0))).toBe(
+      "projective: expected at least one source",
+    );
     expect(verdict(base, (p) => p.sources[0] = 2 * graph.m)).toBe(
       `projective, source 0: expected a dart from 0 to ${2 * graph.m - 1}, got ${2 * graph.m}`,
-    );
-  });
-
-  it("rejects searches that are left out, cut short or out of place", () => {
-    const last = proof.starts.length - 1;
-    const unproved = /^projective: the distance \d+ is not proved at source \d+/;
-    const without = (p: Draft) => {
-      p.starts.splice(0);
-      p.depths.splice(0);
-      p.limits.splice(0);
-    };
-    expect(verdict(base, without)).toMatch(unproved);
-    expect(verdict(base, (p) => p.limits[0] = p.distance - step)).toMatch(unproved);
-    expect(verdict(base, (p) => p.limits[last] = -1)).toBe(
-      `projective, search ${last}, limit: expected an integer >= 0 below 2^53, got -1`,
-    );
-    expect(verdict(base, (p) => p.limits[last] = 2 ** 50)).toBe(
-      `projective, search ${last}: limit ${2 ** 50} is too large`,
-    );
-    expect(verdict(base, (p) => p.depths[0] = 1)).toBe(
-      "projective, search 0: depth 1 without a search above it",
-    );
-    expect(verdict(base, (p) => p.starts[1] = proof.sources.length)).toBe(
-      `projective, search 1: expected a source from 0 to ${proof.sources.length - 1}, ` +
-        `got ${proof.sources.length}`,
-    );
-    expect(verdict(base, (p) => p.limits.pop())).toBe(
-      "projective: expected as many depths and limits as starts",
     );
   });
 
@@ -229,7 +211,7 @@ function mutate(p: Draft, random: Random): void {
   const nudge = (list: number[]) => {
     if (list.length > 0) list[random.below(list.length)] += random.below(5) - 2;
   };
-  switch (random.below(9)) {
+  switch (random.below(6)) {
     case 0:
       return nudge(p.costs);
     case 1:
@@ -237,15 +219,9 @@ function mutate(p: Draft, random: Random): void {
     case 2:
       return nudge(p.sources);
     case 3:
-      return nudge(p.starts);
-    case 4:
-      return nudge(p.depths);
-    case 5:
-      return nudge(p.limits);
-    case 6:
       p.distance += random.below(7) - 3;
       return;
-    case 7: {
+    case 4: {
       const at = random.below(p.rotation.length - 1);
       [p.rotation[at], p.rotation[at + 1]] = [p.rotation[at + 1], p.rotation[at]];
       return;

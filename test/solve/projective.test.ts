@@ -155,6 +155,15 @@ describe("solveProjective", () => {
       "it is not a component of a half-integral kernel",
     );
     expect(reasonFor({})).toBe("optimal");
+    const heavy = doubledCosts.map((cost, e) => (e === 0 ? 1 : 0) + cost * 2 ** 46);
+    const loads = new Float64Array(grid.n);
+    for (let e = 0; e < grid.m; e++) {
+      loads[grid.tails[e]] += heavy[e] / 2;
+      loads[grid.heads[e]] += heavy[e] / 2;
+    }
+    expect(reasonFor({ weights: loads, doubledCosts: heavy })).toBe(
+      "its costs are too large to add up distances exactly",
+    );
     // Other graphs, with cost 1 on each edge.
     const onGraph = (n: number, pairs: [number, number][]) => {
       const graph = graphFromPairs(n, pairs);

@@ -1,9 +1,7 @@
-/** Writes the solver's embedding and searches down in the numbering of certificates. O(n + m) time. */
+/** Writes the solver's embedding and sources down in the numbering of certificates. O(n + m) time. */
 import type { ProjectiveProof } from "../../certify/certificate.ts";
 import type { Piece } from "../engine.ts";
 import type { DirectedDual } from "./directed-dual.ts";
-import type { LeastCycle } from "./least-cycle.ts";
-import type { SourceCurve } from "./source-curve.ts";
 
 /**
  * The proof that no stable set of the piece is heavier than the cycle allows.
@@ -12,6 +10,8 @@ import type { SourceCurve } from "./source-curve.ts";
  * @param next length 2m, its rotation system
  * @param unit what `costs` are multiplied by
  * @param costs length m, doubled costs in units
+ * @param sources faces of a one-sided walk
+ * @param distance the least distance between a face and its antipode
  */
 export function proofOf(
   piece: Piece,
@@ -19,8 +19,8 @@ export function proofOf(
   unit: number,
   costs: Int32Array | Float64Array,
   dual: DirectedDual,
-  curve: SourceCurve,
-  cycle: LeastCycle,
+  sources: Int32Array,
+  distance: number,
 ): ProjectiveProof {
   const { graph, labels } = piece;
   const { n, m, offsets } = graph;
@@ -61,10 +61,7 @@ export function proofOf(
     unit,
     costs: orderedCosts,
     rotation,
-    sources: Int32Array.from(curve.faces, (x) => dartOf[x]),
-    distance: cycle.cost,
-    starts: Int32Array.from(cycle.plan.sources),
-    depths: Int32Array.from(cycle.plan.depths),
-    limits: Float64Array.from(cycle.plan.limits),
+    sources: Int32Array.from(sources, (x) => dartOf[x]),
+    distance,
   };
 }

@@ -1,0 +1,91 @@
+/**
+ * Where least cycles are looked for: a closed one-sided walk through faces that share an edge. On the
+ * projective plane every one-sided cycle of the dual meets it in a face, so its faces serve as sources.
+ * O(m) time.
+ *
+ * From a face across an edge and back costs at most what going once around an end of the edge costs.
+ */
+import type { Graph } from "../../graph/graph.ts";
+import type { Meter } from "../../run/meter.ts";
+import type { DirectedDual } from "./directed-dual.ts";
+
+/** A walk on the sphere from a face to its antipode. */
+export interface SourceWalk {
+  /** The faces passed, consecutive ones share an edge; the antipode at the end is left out. */
+  readonly faces: Int32Array;
+  /** As long as `faces`: the bounds on going there and back, added up along the walk. */
+  readonly positions: Float64Array;
+}
+
+/**
+ * Finds a walk of few faces: through the middle of one that has the fewest from some face to its
+ * antipode, the walk with the fewest.
+ *
+ * @param graph H
+ * @param around length n, what the dual arcs around each vertex cost together, integers > 0
+ * @param meter counts one unit for each arc scanned
+ */
+export function sourceWalk(
+  graph: Graph,
+  dual: DirectedDual,
+  around: Float64Array,
+  meter: Meter,
+): SourceWalk {
+  const first = fewestFaces(dual, 0, meter);
+  const faces = fewestFaces(dual, first[first.length >> 1], meter);
+  const positions = new Float64Array(faces.length);
+  for (let i = 1; i < faces.length; i++) {
+    positions[i] = positions[i - 1] + thereAndBack(faces[i - 1], faces[i]);
+  }
+  return { faces, positions };
+
+  /** The least bound over the edges between two faces. */
+  function thereAndBack(x: number, y: number): number {
+    let least = Infinity;
+    for (const { offsets, ends, darts } of [dual.out, dual.into]) {
+      for (let a = offsets[x >> 1]; a < offsets[(x >> 1) + 1]; a++) {
+        if ((ends[a] ^ (x & 1)) !== y) continue;
+        const e = darts[a] >> 1;
+        least = Math.min(least, around[graph.tails[e]], around[graph.heads[e]]);
+      }
+    }
+    return least;
+  }
+}
+
+/** Arcs scanned between two ticks of the meter. */
+const UNITS_PER_TICK = 4096;
+
+/** A walk with the fewest faces from this face to its antipode, which is left out. O(m) time. */
+function fewestFaces({ pairs, out, into }: DirectedDual, root: number, meter: Meter): Int32Array {
+  const from = new Int32Array(2 * pairs).fill(-1), queue = new Int32Array(2 * pairs);
+  const { offsets } = out;
+  from[root] = root;
+  queue[0] = root;
+  let tail = 1, work = 0;
+  for (let head = 0; from[root ^ 1] < 0; head++) {
+    if (head === tail) throw new Error("internal: no walk leads from a face to its antipode");
+    const x = queue[head], row = x >> 1;
+    for (let a = offsets[row]; a < offsets[row + 1]; a++) {
+      for (let side = 0; side < 2; side++) {
+        const y = (side === 0 ? out : into).ends[a] ^ (x & 1);
+        if (from[y] >= 0) continue;
+        from[y] = x;
+        queue[tail++] = y;
+      }
+      work += 2;
+    }
+    if (work >= UNITS_PER_TICK) {
+      meter.tick(work);
+      work = 0;
+    }
+  }
+  // Back to the root, or to the first face whose antipode has been passed: a shorter walk is in there.
+  const faces: number[] = [], place = new Map<number, number>();
+  for (let x = root ^ 1;; x = from[x]) {
+    const met = place.get(x ^ 1);
+    if (met !== undefined) return Int32Array.from(faces.slice(met + 1).concat(x).reverse());
+    place.set(x, faces.length);
+    faces.push(x);
+  }
+}
