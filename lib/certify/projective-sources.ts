@@ -48,48 +48,54 @@ export function provenDistances(
   walk: Walk,
   wanted: number,
 ): Float64Array {
-  const { faces, returns } = walk;
-  const total = load.reduce((sum, x) => sum + x, 0);
-  if (!(total <= MOST_LOAD)) {
-    throw new Rejected(`projective: the costs add up to ${total}, more than ${MOST_LOAD}`);
+  const { faces, there, back } = walk;
+  const sum = (list: Float64Array) => list.reduce((total, x) => total + x, 0);
+  if (!(sum(load) <= MOST_LOAD)) {
+    throw new Rejected(`projective: the costs add up to ${sum(load)}, more than ${MOST_LOAD}`);
   }
   const proven = new Float64Array(faces.length);
-  const tree = new RehungTree(inner, dual, costs, faces[0], returns.reduce((sum, x) => sum + x, 0));
-  let limit = 0;
+  const tree = new RehungTree(inner, dual, costs, faces[0], sum(there) + sum(back));
+  let wayBack = 0;
   for (let i = 0; i < faces.length; i++) {
-    limit += returns[i];
+    wayBack += back[i];
     proven[i] = tree.apart(faces[i]);
     if (proven[i] >= wanted) continue;
-    tree.rehang(faces[i], limit);
-    limit = 0;
+    tree.rehang(faces[i], wayBack);
+    wayBack = 0;
     proven[i] = tree.apart(faces[i]);
   }
   tree.requireSums(load);
   return proven;
 }
 
+/** Faces and cover vertices have a record of four numbers each. */
+const RECORD = 4;
 /**
- * Each cover vertex has a record of four numbers: the dart whose edge leads on from it, the vertex at
- * the other end, the slack of that edge, and how far p had been raised outside when the edge came
- * between branch and outside. A vertex is called by the place of its record, plus 1 if it is white.
+ * Of a cover vertex: the dart whose edge leads on from it, the vertex at the other end, the slack of
+ * that edge, and how far p had been raised outside when the edge came between branch and outside. A
+ * vertex is called by the place of its record, plus 1 if it is white.
  */
-const EDGE = 0, ONWARD = 1, SLACK = 2, RAISED = 3, RECORD = 4;
+const EDGE = 0, ONWARD = 1, SLACK = 2, RAISED = 3;
 /** In RAISED: the edge is not between branch and outside; it is on a way to the cycle just walked. */
 const AWAY = -1, WALKED = -2;
+/**
+ * Of a face: the dart whose arc enters it in the tree, -1 at the root; the face that comes from; and the
+ * ends of the edge it crosses.
+ */
+const ARC = 0, ABOVE = 1, BLACK = 2, WHITE = 3;
 
 class RehungTree {
-  /** Length 2·pairs: the dart whose arc enters the face in the tree, -1 at the root. */
-  readonly #above: Int32Array;
-  readonly #records: Int32Array | Float64Array;
-  /** Length 4m: the black end of the edge of dart d at 2d, its white end at 2d + 1. */
-  readonly #ends: Int32Array;
+  readonly #faces: Int32Array;
+  readonly #vertices: Int32Array | Float64Array;
   readonly #queue: MonotoneQueue;
+  #root: number;
   #raised = 0;
+  #limit = 0;
 
   /**
    * Starts with a tree of shortest paths.
    *
-   * @param most no less than all limits of `rehang` together
+   * @param most no less than what going there and back costs each time it is rehung, all together
    */
   constructor(
     readonly inner: InnerGraph,
@@ -98,84 +104,87 @@ class RehungTree {
     root: number,
     most: number,
   ) {
-    const { distance, above } = shortestPaths(inner, dual, costs, root);
-    this.#above = above;
-    let largest = 0, dearest = 0;
-    for (let x = 0; x < distance.length; x++) if (distance[x] > largest) largest = distance[x];
-    for (let e = 0; e < costs.length; e++) if (costs[e] > dearest) dearest = costs[e];
+    const { right } = dual, { reverse, targets } = inner;
+    const { state, furthest, dearest } = shortestPaths(inner, dual, costs, root);
+    this.#root = root;
+    this.#queue = most < MOST_BUCKETS ? new BucketQueue(most) : new HeapQueue();
+    const faces = this.#faces = new Int32Array(RECORD * 2 * dual.pairs);
+    const inTree = new Uint8Array(right.length);
+    for (let x = 0; x < 2 * dual.pairs; x++) {
+      const d = faces[RECORD * x + ARC] = state[2 * x + 1];
+      if (d < 0) continue;
+      inTree[d] = 1;
+      faces[RECORD * x + ABOVE] = right[d];
+    }
     // Slacks are at most this at first, and later grow by what p is raised.
-    const size = 2 * RECORD * (inner.offsets.length - 1);
-    this.#records = dearest + largest + most < 2 ** 31
+    const size = RECORD * 2 * (inner.offsets.length - 1);
+    this.#vertices = dearest + furthest + most < 2 ** 31
       ? new Int32Array(size)
       : new Float64Array(size);
-    this.#ends = this.#span(distance);
-    this.#queue = most < MOST_BUCKETS ? new BucketQueue(most) : new HeapQueue();
+    const name = this.#span(inTree, state);
+    for (let face = 0; face < faces.length; face += RECORD) {
+      const d = faces[face + ARC];
+      if (d < 0) continue;
+      faces[face + BLACK] = name[2 * targets[reverse[d]]];
+      faces[face + WHITE] = name[2 * targets[d] + 1];
+    }
   }
 
   /**
-   * The spanning tree of the cover's vertices, with its slacks. Vertices that lead on to each other are
-   * put next to each other where that is possible.
+   * The spanning tree of the cover's vertices, with its slacks. The largest branch at a vertex comes
+   * right after it in memory.
    *
-   * @returns the ends of edges
+   * @param inTree length 2m: 1 for darts whose arcs are in the tree of faces
+   * @param state distances as `shortestPaths` gives them
+   * @returns length 2n: what (v,0) and (v,1) are called, at 2v and 2v + 1
    */
-  #span(distance: ArrayLike<number>): Int32Array {
+  #span(inTree: Uint8Array, state: Int32Array | Float64Array): Int32Array {
     const { offsets, targets, reverse } = this.inner;
-    const { left, right, edgeOf } = this.dual, above = this.#above, records = this.#records;
-    const n = offsets.length - 1, darts = targets.length;
-    const inTree = new Uint8Array(darts);
-    for (let x = 0; x < above.length; x++) if (above[x] >= 0) inTree[above[x]] = 1;
-    // Cover vertex 2v is (v,0), 2v + 1 is (v,1).
-    const order = new Int32Array(2 * n), before = new Int32Array(2 * n).fill(-1);
-    const by = new Int32Array(2 * n);
+    const { left, right, edgeOf } = this.dual, records = this.#vertices;
+    const n = offsets.length - 1;
+    // One after the other: vertices as they are met, from which one (by its rank), and by which edge.
+    const order = new Int32Array(2 * n), from = new Int32Array(2 * n), by = new Int32Array(2 * n);
+    const met = new Uint8Array(2 * n);
+    met[0] = 1;
     let tail = 1;
-    before[0] = 0;
-    by[0] = -1;
     for (let head = 0; head < tail; head++) {
-      const x = order[head], white = x & 1;
-      for (let d = offsets[x >> 1]; d < offsets[(x >> 1) + 1]; d++) {
-        const y = 2 * targets[d] + 1 - white, edge = white === 0 ? d : reverse[d];
-        if (before[y] >= 0 || inTree[edge] !== 0) continue;
-        before[y] = x;
-        by[y] = edge;
-        order[tail++] = y;
-      }
-    }
-    if (tail < 2 * n) {
-      throw new Rejected("projective: the edges outside the tree do not span the cover");
-    }
-    // How many hang on each; the one that most hang on comes right after the one it leads to.
-    const weight = new Int32Array(2 * n).fill(1), main = new Int32Array(2 * n).fill(-1);
-    for (let i = 2 * n - 1; i > 0; i--) {
-      const y = order[i], x = before[y];
-      weight[x] += weight[y];
-      if (main[x] < 0 || weight[y] > weight[main[x]]) main[x] = y;
-    }
-    const name = new Int32Array(2 * n), free = new Int32Array(2 * n);
-    for (let i = 0; i < 2 * n; i++) {
-      const y = order[i], x = before[y], d = by[y];
-      let place = 0;
-      if (i > 0) {
-        place = main[x] === y ? name[x] / RECORD + 1 | 0 : free[x];
-        if (main[x] !== y) free[x] += weight[y];
-      }
-      free[y] = place + 1 + (main[y] < 0 ? 0 : weight[main[y]]);
-      const record = RECORD * place;
-      name[y] = record + (y & 1);
-      records[record + EDGE] = d;
-      records[record + ONWARD] = i > 0 ? name[x] : -1;
-      records[record + RAISED] = AWAY;
-      if (i > 0) {
-        records[record + SLACK] = this.costs[edgeOf[d]] + distance[right[d]] - distance[left[d]];
-      }
-    }
-    const ends = new Int32Array(2 * darts);
-    for (let v = 0; v < n; v++) {
+      const white = order[head] & 1, v = order[head] >> 1;
       for (let d = offsets[v]; d < offsets[v + 1]; d++) {
-        ends[2 * d] = name[2 * v];
-        ends[2 * d + 1] = name[2 * targets[d] + 1];
+        const y = 2 * targets[d] + 1 - white;
+        if (met[y] !== 0) continue;
+        const edge = white === 0 ? d : reverse[d];
+        if (inTree[edge] !== 0) continue;
+        met[y] = 1;
+        order[tail] = y;
+        from[tail] = head;
+        by[tail++] = edge;
       }
     }
-    return ends;
+    if (tail < 2 * n) throw new Rejected("projective: the edges do not span the cover");
+    const branch = new Int32Array(2 * n).fill(1), main = new Int32Array(2 * n).fill(-1);
+    for (let i = 2 * n - 1; i > 0; i--) {
+      const k = from[i];
+      branch[k] += branch[i];
+      if (main[k] < 0 || branch[i] > branch[main[k]]) main[k] = i;
+    }
+    const place = new Int32Array(2 * n), free = new Int32Array(2 * n), name = new Int32Array(2 * n);
+    for (let i = 0; i < 2 * n; i++) {
+      const k = from[i];
+      if (i > 0 && main[k] === i) place[i] = place[k] + 1;
+      else if (i > 0) {
+        place[i] = free[k];
+        free[k] += branch[i];
+      }
+      free[i] = place[i] + 1 + (main[i] < 0 ? 0 : branch[main[i]]);
+      const record = RECORD * place[i], d = by[i];
+      name[order[i]] = record + (order[i] & 1);
+      records[record + EDGE] = i > 0 ? d : -1;
+      records[record + ONWARD] = i > 0 ? name[order[k]] : -1;
+      records[record + RAISED] = AWAY;
+      if (i === 0) continue;
+      records[record + SLACK] = this.costs[edgeOf[d]] + state[2 * right[d]] - state[2 * left[d]];
+    }
+    return name;
   }
 
   /** A lower bound for the distance between a face and its antipode, the same both ways. */
@@ -185,10 +194,11 @@ class RehungTree {
 
   /** The costs on the way from the root down to a face. */
   #below(x: number): number {
+    const faces = this.#faces, { edgeOf } = this.dual;
     let sum = 0;
-    for (let d = this.#above[x]; d >= 0; d = this.#above[x]) {
-      sum += this.costs[this.dual.edgeOf[d]];
-      x = this.dual.right[d];
+    for (let d = faces[RECORD * x + ARC]; d >= 0; d = faces[RECORD * x + ARC]) {
+      sum += this.costs[edgeOf[d]];
+      x = faces[RECORD * x + ABOVE];
     }
     return sum;
   }
@@ -197,49 +207,55 @@ class RehungTree {
    * Hangs the tree up at another face.
    *
    * @param to the face
-   * @param limit no less than what going from the root there and back costs
+   * @param back no less than the distance from there to the root
    */
-  rehang(to: number, limit: number): void {
-    const above = this.#above, records = this.#records, ends = this.#ends, queue = this.#queue;
-    const cut = above[to];
-    if (cut < 0) return;
-    above[to] = -1;
+  rehang(to: number, back: number): void {
+    if (to === this.#root) return;
+    const faces = this.#faces, vertices = this.#vertices, queue = this.#queue;
+    const { left, right } = this.dual;
+    this.#root = to;
+    this.#limit = this.#below(to) + back;
     this.#raised = 0;
     queue.clear();
     // The cut arc leads into the branch: its edge is walked from its black end.
-    const start = ends[2 * cut];
-    this.#turnRound(start, -1, cut);
-    for (let w = start;;) if ((w = this.#come(w, limit)) === start) break;
+    const cut = RECORD * to, start = faces[cut + BLACK];
+    this.#turnRound(start, -1, faces[cut + ARC], faces[cut + WHITE]);
+    faces[cut + ARC] = -1;
+    for (let w = start;;) if ((w = this.#come(w)) === start) break;
     for (;;) {
       const white = queue.pop(), record = white & ~1;
       if (white < 0) throw new Rejected("projective: rehanging passes its limit");
-      const came = records[record + RAISED];
+      const came = vertices[record + RAISED];
       // An edge that is gone, or another one in its place.
-      if (came < 0 || came + records[record + SLACK] !== queue.key) continue;
+      if (came < 0 || came + vertices[record + SLACK] !== queue.key) continue;
       this.#raised = queue.key;
-      const edge = records[record + EDGE], held = this.dual.left[edge], former = above[held];
-      above[held] = edge;
+      const edge = vertices[record + EDGE], ahead = vertices[record + ONWARD];
+      const held = RECORD * left[edge], former = faces[held + ARC];
+      const black = faces[held + BLACK], other = faces[held + WHITE];
+      faces[held + ARC] = edge;
+      faces[held + ABOVE] = right[edge];
+      faces[held + BLACK] = ahead;
+      faces[held + WHITE] = white;
+      let w = ahead;
       if (former < 0) {
-        for (let w = records[record + ONWARD]; w !== white;) w = this.#go(w);
-        records[record + EDGE] = records[record + ONWARD] = -1;
-        records[record + RAISED] = AWAY;
+        while (w !== white) w = this.#go(w);
+        vertices[record + EDGE] = vertices[record + ONWARD] = -1;
+        vertices[record + RAISED] = AWAY;
         return;
       }
       // The edge of `former` closes another cycle, now that the one held leads nowhere.
-      let w = records[record + ONWARD];
-      const black = ends[2 * former], other = ends[2 * former + 1];
-      const joint = this.#turnRound(black, white, former);
+      const joint = this.#turnRound(black, white, former, other);
       let x = other;
-      while (records[(x & ~1) + RAISED] === AWAY) x = this.#come(x, limit);
-      const apart = records[(x & ~1) + RAISED] === WALKED;
+      while (vertices[(x & ~1) + RAISED] === AWAY) x = this.#come(x);
+      const apart = vertices[(x & ~1) + RAISED] === WALKED;
       // What is left of the former cycle: up to where the new one joins it, or all of it.
       for (const end = apart ? joint : x; w !== end;) w = this.#go(w);
       w = joint;
       if (apart) {
-        for (; w !== x; w = records[(w & ~1) + ONWARD]) records[(w & ~1) + RAISED] = AWAY;
+        for (; w !== x; w = vertices[(w & ~1) + ONWARD]) vertices[(w & ~1) + RAISED] = AWAY;
       }
-      while (w !== black) w = this.#come(w, limit);
-      this.#come(black, limit);
+      while (w !== black) w = this.#come(w);
+      this.#come(black);
     }
   }
 
@@ -249,24 +265,24 @@ class RehungTree {
    *
    * @param from the vertex
    * @param end the vertex at the end, whose own edge is lost; -1 if it has none
-   * @param edge the edge to lead on by, `from` being its black end
+   * @param edge the edge to lead on by, and `onward` the vertex where it leads
    * @returns the first vertex of the cycle on the way, which stays marked; those before are WALKED
    */
-  #turnRound(from: number, end: number, edge: number): number {
-    const records = this.#records, raised = this.#raised;
-    let joint = -1, onward = this.#ends[2 * edge + 1], slack = 0;
+  #turnRound(from: number, end: number, edge: number, onward: number): number {
+    const vertices = this.#vertices, raised = this.#raised;
+    let joint = -1, slack = 0;
     for (let w = from;;) {
-      const record = w & ~1, came = records[record + RAISED];
-      const itsEdge = records[record + EDGE], itsOnward = records[record + ONWARD];
-      let itsSlack = records[record + SLACK];
-      records[record + EDGE] = edge;
-      records[record + ONWARD] = onward;
-      records[record + SLACK] = slack;
+      const record = w & ~1, came = vertices[record + RAISED];
+      const itsEdge = vertices[record + EDGE], itsOnward = vertices[record + ONWARD];
+      let itsSlack = vertices[record + SLACK];
+      vertices[record + EDGE] = edge;
+      vertices[record + ONWARD] = onward;
+      vertices[record + SLACK] = slack;
       if (came >= 0) {
         itsSlack += (w & 1) !== 0 ? came - raised : raised - came;
         if (joint < 0) joint = w;
-        else records[record + RAISED] = AWAY;
-      } else if (end >= 0) records[record + RAISED] = WALKED;
+        else vertices[record + RAISED] = AWAY;
+      } else if (end >= 0) vertices[record + RAISED] = WALKED;
       if (w === end || itsOnward < 0) return joint;
       edge = itsEdge;
       onward = w;
@@ -276,24 +292,25 @@ class RehungTree {
   }
 
   /** The edge that leads on from w comes between branch and outside. Answers where it leads. */
-  #come(w: number, limit: number): number {
-    const records = this.#records, record = w & ~1, raised = this.#raised;
-    records[record + RAISED] = raised;
+  #come(w: number): number {
+    const vertices = this.#vertices, record = w & ~1, raised = this.#raised;
+    vertices[record + RAISED] = raised;
     if ((w & 1) !== 0) {
-      const gone = raised + records[record + SLACK];
-      if (gone <= limit) this.#queue.push(gone, w);
+      const gone = raised + vertices[record + SLACK];
+      if (gone <= this.#limit) this.#queue.push(gone, w);
     }
-    return records[record + ONWARD];
+    return vertices[record + ONWARD];
   }
 
   /** The edge that leads on from w is between them no more. Answers where it leads. */
   #go(w: number): number {
-    const records = this.#records, record = w & ~1, since = this.#raised - records[record + RAISED];
-    const slack = records[record + SLACK] + ((w & 1) !== 0 ? -since : since);
+    const vertices = this.#vertices, record = w & ~1;
+    const since = this.#raised - vertices[record + RAISED];
+    const slack = vertices[record + SLACK] + ((w & 1) !== 0 ? -since : since);
     if (slack < 0) throw new Rejected("projective: a slack is negative");
-    records[record + SLACK] = slack;
-    records[record + RAISED] = AWAY;
-    return records[record + ONWARD];
+    vertices[record + SLACK] = slack;
+    vertices[record + RAISED] = AWAY;
+    return vertices[record + ONWARD];
   }
 
   /**
@@ -303,55 +320,66 @@ class RehungTree {
    * @param load length n, the costs at each vertex added up
    */
   requireSums(load: Float64Array): void {
-    const { offsets } = this.inner, records = this.#records, ends = this.#ends;
-    const sums = new Float64Array(records.length / RECORD);
-    for (let record = 0; record < records.length; record += RECORD) {
-      if (records[record + ONWARD] < 0) continue;
-      if (records[record + SLACK] < 0) throw new Rejected("projective: a slack is negative");
-      sums[record / RECORD] += records[record + SLACK];
-      sums[records[record + ONWARD] >> 2] += records[record + SLACK];
+    const { targets, reverse } = this.inner, vertices = this.#vertices;
+    const sums = new Float64Array(vertices.length / RECORD), wanted = new Float64Array(sums.length);
+    for (let record = 0; record < vertices.length; record += RECORD) {
+      const d = vertices[record + EDGE], slack = vertices[record + SLACK];
+      if (d < 0) continue;
+      if (slack < 0) throw new Rejected("projective: a slack is negative");
+      const other = vertices[record + ONWARD];
+      sums[record / RECORD] += slack;
+      sums[other >> 2] += slack;
+      const isWhite = (other & 1) === 0;
+      wanted[record / RECORD] = load[isWhite ? targets[d] : targets[reverse[d]]];
+      wanted[other >> 2] = load[isWhite ? targets[reverse[d]] : targets[d]];
     }
-    for (let v = 0; v < load.length; v++) {
-      for (let d = offsets[v]; d < offsets[v + 1]; d++) {
-        const black = ends[2 * d] >> 2, white = ends[2 * this.inner.reverse[d] + 1] >> 2;
-        if (sums[black] !== load[v] || sums[white] !== load[v]) {
-          throw new Rejected("projective: the slacks do not add up");
-        }
-      }
+    if (sums.some((sum, i) => sum !== wanted[i])) {
+      throw new Rejected("projective: the slacks do not add up");
     }
   }
 }
 
-/** Dijkstra's method on the sphere: distances from a face, and the dart whose arc enters each. */
+/**
+ * Dijkstra's method on the sphere.
+ *
+ * @returns `state`, length 4·pairs: the distance of face x at 2x, the dart whose arc enters it at 2x + 1,
+ *   -1 for the root
+ */
 function shortestPaths(
   { reverse }: InnerGraph,
   { pairs, offsets, out, left, edgeOf }: SphereDual,
   costs: Float64Array,
   root: number,
-): { distance: Float64Array; above: Int32Array } {
+): { state: Int32Array | Float64Array; furthest: number; dearest: number } {
   let dearest = 0;
   for (let e = 0; e < costs.length; e++) if (costs[e] > dearest) dearest = costs[e];
   const queue = dearest < MOST_BUCKETS / 128 ? new BucketQueue(dearest) : new HeapQueue();
-  const distance = new Float64Array(2 * pairs).fill(Infinity);
-  const above = new Int32Array(2 * pairs).fill(-1);
   // End and cost of each arc out of an even face; out of its antipode it is the antipode of the end.
-  const arcs = new Float64Array(2 * out.length);
+  const size = 2 * out.length;
+  const arcs = dearest < 2 ** 31 ? new Int32Array(size) : new Float64Array(size);
   for (let a = 0; a < out.length; a++) {
     arcs[2 * a] = left[out[a]];
     arcs[2 * a + 1] = costs[edgeOf[out[a]]];
   }
-  distance[root] = 0;
+  // A path passes no face twice.
+  const narrow = 2 * pairs * dearest < 2 ** 31 - 1;
+  const state = narrow ? new Int32Array(4 * pairs) : new Float64Array(4 * pairs);
+  state.fill(narrow ? 2 ** 31 - 1 : Infinity);
+  state[2 * root] = 0;
+  state[2 * root + 1] = -1;
   queue.push(0, root);
+  let furthest = 0;
   for (let x = queue.pop(); x >= 0; x = queue.pop()) {
     const key = queue.key, side = x & 1, last = offsets[(x >> 1) + 1];
-    if (distance[x] !== key) continue;
+    if (state[2 * x] !== key) continue;
+    furthest = key;
     for (let a = offsets[x >> 1]; a < last; a++) {
       const y = arcs[2 * a] ^ side, reached = key + arcs[2 * a + 1];
-      if (reached >= distance[y]) continue;
-      distance[y] = reached;
-      above[y] = side === 0 ? out[a] : reverse[out[a]];
+      if (reached >= state[2 * y]) continue;
+      state[2 * y] = reached;
+      state[2 * y + 1] = side === 0 ? out[a] : reverse[out[a]];
       queue.push(reached, y);
     }
   }
-  return { distance, above };
+  return { state, furthest, dearest };
 }

@@ -15,16 +15,16 @@ import { Rejected } from "./rejected.ts";
 export interface Walk {
   /** The faces passed, no two of them equal or antipodes; from the last a step leads to the first's. */
   readonly faces: Int32Array;
-  /**
-   * As long as `faces`: what going from the face before to this one and back costs at most, that is once
-   * around an end of an edge between them. 0 for the first.
-   */
-  readonly returns: Float64Array;
+  /** As long as `faces`: no less than the distance to each from the face before; 0 for the first. */
+  readonly there: Float64Array;
+  /** As long as `faces`: no less than the distance from each to the face before. */
+  readonly back: Float64Array;
 }
 
 /**
  * Checks the walk.
  *
+ * @param costs length m, edges as in `dual`
  * @param load length n, the costs at each vertex added up
  * @throws {Rejected} when consecutive faces share no edge, or a face comes twice
  */
@@ -32,11 +32,13 @@ export function requireWalk(
   { targets, reverse }: InnerGraph,
   dual: SphereDual,
   { sources }: ProjectiveProof,
+  costs: Float64Array,
   load: Float64Array,
 ): Walk {
-  const { pairs, left, right, next, previous } = dual;
+  const { pairs, left, right, edgeOf, next, previous } = dual;
   const count = sources.length;
-  const faces = new Int32Array(count), returns = new Float64Array(count);
+  const faces = new Int32Array(count);
+  const there = new Float64Array(count), back = new Float64Array(count);
   const met = new Uint8Array(pairs);
   for (let i = 0; i < count; i++) {
     const dart = sources[i];
@@ -53,28 +55,33 @@ export function requireWalk(
   }
   if (count === 0) throw new Rejected("projective: expected at least one source");
   for (let i = 0; i < count; i++) {
-    const cost = across(sources[i], i + 1 < count ? faces[i + 1] : faces[0] ^ 1);
-    if (cost === Infinity) {
+    const [to, fro] = across(sources[i], i + 1 < count ? faces[i + 1] : faces[0] ^ 1);
+    if (to === Infinity) {
       throw new Rejected(
         i + 1 < count
           ? `projective, source ${i + 1}: its face shares no edge with the one before`
           : "projective: the last source shares no edge with the antipode of the first",
       );
     }
-    if (i + 1 < count) returns[i + 1] = cost;
+    if (i + 1 < count) [there[i + 1], back[i + 1]] = [to, fro];
   }
-  return { faces, returns };
+  return { faces, there, back };
 
-  /** The least load at an edge between the face left of a dart and another one. */
-  function across(start: number, face: number): number {
-    let least = Infinity, d = start;
+  /** Bounds for the ways from the face left of a dart to another one and back; or infinite. */
+  function across(start: number, face: number): [number, number] {
+    let to = Infinity, fro = Infinity, d = start;
     do {
-      // The edges around the face in turn: the dart d starts on sheet 0, and after it another ends there.
+      // The edges around the face in turn: one whose arc leads in, then one whose arc leads out.
       const f = reverse[next[reverse[d]]];
-      if (right[d] === face) least = Math.min(least, load[targets[d]], load[targets[reverse[d]]]);
-      if (left[f] === face) least = Math.min(least, load[targets[f]], load[targets[reverse[f]]]);
+      if (right[d] === face) [to, fro] = [Math.min(to, around(d)), Math.min(fro, costs[edgeOf[d]])];
+      if (left[f] === face) [to, fro] = [Math.min(to, costs[edgeOf[f]]), Math.min(fro, around(f))];
       d = previous[f];
     } while (d !== start);
-    return least;
+    return [to, fro];
+  }
+
+  /** What it costs to get from the head of an arc to its tail around an end of the edge it crosses. */
+  function around(d: number): number {
+    return Math.min(load[targets[d]], load[targets[reverse[d]]]) - costs[edgeOf[d]];
   }
 }

@@ -41,7 +41,7 @@ export function projectiveBound(play: Play, proof: ProjectiveProof): bigint {
   if (unit < 1) throw new Rejected("projective, unit: expected an integer >= 1, got 0");
   const { costs, load } = requireCosts(play, inner, proof, unit);
   const dual = sphereDual(inner, proof.rotation);
-  const walk = requireWalk(inner, dual, proof, load);
+  const walk = requireWalk(inner, dual, proof, costs, load);
   const claimed = requireMultiplier(proof.distance, "projective, distance");
   const proven = provenDistances(inner, dual, costs, load, walk, claimed);
 
@@ -50,7 +50,7 @@ export function projectiveBound(play: Play, proof: ProjectiveProof): bigint {
   for (let v = 0; v < inner.vertices.length; v++) {
     const weight = play.weights[inner.vertices[v]];
     total += BigInt(weight);
-    divisor = greatestCommonDivisor(weight, divisor);
+    if (divisor !== 1) divisor = greatestCommonDivisor(weight, divisor);
   }
   if (divisor === 0) return 0n;
   const G = 2n * BigInt(divisor);
@@ -109,6 +109,10 @@ function requireCosts(
 }
 
 function greatestCommonDivisor(a: number, b: number): number {
-  while (b !== 0) [a, b] = [b, a % b];
+  while (b !== 0) {
+    const rest = a % b;
+    a = b;
+    b = rest;
+  }
   return a;
 }

@@ -11,10 +11,13 @@
 import { dartEnd, dartStart, traceFaces } from "../graph/embedding.ts";
 import type { Graph } from "../graph/graph.ts";
 import { evenOut } from "./disc-even.ts";
+import { liftedEmbedding } from "../parity/double-cover.ts";
 import type { EvenFaceEmbedding } from "../parity/even-face-result.ts";
 
 /** The disc. Vertices and edges are those of the double cover that lie in one half. */
 export interface DiscLayout {
+  /** The double cover, numbered as in parity/double-cover.ts. */
+  readonly cover: Graph;
   /** Cover vertices in the disc; vertex x of the cover is vertex x >> 1 of H. */
   readonly vertices: readonly number[];
   /** Cover edges in the disc; edge c of the cover is edge c >> 1 of H. */
@@ -44,7 +47,7 @@ const SETTLED = 1e-7;
  * @returns positions in the unit disc
  */
 export function layoutDisc(embedding: EvenFaceEmbedding): DiscLayout {
-  const { cover, coverNext } = embedding;
+  const { cover, coverNext } = liftedEmbedding(embedding);
   const rim = antipodalCycle(cover);
   const faces = traceFaces(coverNext);
   const inside = half(cover, rim, faces.of, faces.count);
@@ -58,6 +61,7 @@ export function layoutDisc(embedding: EvenFaceEmbedding): DiscLayout {
   const vertices: number[] = [];
   for (let v = 0; v < cover.n; v++) if (present[v] !== 0) vertices.push(v);
   return {
+    cover,
     vertices,
     edges,
     rim,

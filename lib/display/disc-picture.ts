@@ -30,8 +30,8 @@ const RADIUS = 322;
 /** Draws the disc. @returns an SVG document */
 export function drawDisc(picture: DiscPicture, title: string): string {
   const { embedding, labels, weights, styles, styleOf, strong } = picture;
-  const { cover } = embedding;
   const disc = layoutDisc(embedding);
+  const { cover } = disc;
   const px = (v: number) => SIZE / 2 + RADIUS * disc.x[v];
   const py = (v: number) => SIZE / 2 + RADIUS * disc.y[v];
   const canvas = new Canvas(SIZE, SIZE + 30);

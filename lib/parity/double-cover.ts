@@ -61,3 +61,17 @@ export function liftRotation(next: Int32Array, even?: Uint8Array): Int32Array {
   }
   return lifted;
 }
+
+/**
+ * The lift of an embedding in which every edge is twisted: for an even-face embedding in the projective
+ * plane, the double cover in the sphere. Swapping the sheets (vertex x ^ 1, edge c ^ 1, dart d ^ 2)
+ * reverses it.
+ *
+ * @param embedding H and its rotation system, length 2m
+ * @returns the bipartite double cover of H and its rotation system, length 4m. O(n + m) time.
+ */
+export function liftedEmbedding(
+  { graph, next }: { readonly graph: Graph; readonly next: Int32Array },
+): { cover: Graph; coverNext: Int32Array } {
+  return { cover: doubleCover(graph), coverNext: liftRotation(next) };
+}

@@ -11,6 +11,7 @@ import { traceFaces } from "../graph/embedding.ts";
 import type { Graph } from "../graph/graph.ts";
 import { twoColouring } from "../graph/two-colouring.ts";
 import { Interrupted, type Meter } from "../run/meter.ts";
+import { liftedEmbedding } from "./double-cover.ts";
 import type { EvenFaceEmbedding } from "./even-face-result.ts";
 import { EXACT_UP_TO, type Transversal } from "./transversal.ts";
 
@@ -70,7 +71,8 @@ class CurveSearch {
   readonly #depth: Int32Array;
   #now = 0;
 
-  constructor({ cover, coverNext }: EvenFaceEmbedding) {
+  constructor(embedding: EvenFaceEmbedding) {
+    const { cover, coverNext } = liftedEmbedding(embedding);
     const { count, of } = traceFaces(coverNext);
     this.#cover = cover;
     this.#faceOf = of;

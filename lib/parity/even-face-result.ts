@@ -4,18 +4,15 @@ import type { Kuratowski } from "../graph/kuratowski.ts";
 
 /**
  * An embedding of H in the projective plane with all faces even. Its edge signature is "every edge
- * twisted": a cycle is one-sided exactly if it is odd. Verified when it is returned: `coverNext` is
- * a rotation system of the cover with Euler genus 0, and swapping the sheets (vertex x ^ 1, edge
- * c ^ 1, dart d ^ 2) reverses it.
+ * twisted": a cycle is one-sided exactly if it is odd. Verified when it is returned. Its lift to the
+ * sphere, `liftedEmbedding` of parity/double-cover.ts, embeds the double cover.
  */
 export interface EvenFaceEmbedding {
   readonly kind: "embedded";
+  /** H itself. */
+  readonly graph: Graph;
   /** Length 2m: the rotation system of H, counterclockwise on sheet 0 (see graph/embedding.ts). */
   readonly next: Int32Array;
-  /** The bipartite double cover H × K₂, numbered as in parity/double-cover.ts; connected. */
-  readonly cover: Graph;
-  /** Length 4m: the rotation system of the cover in the sphere. */
-  readonly coverNext: Int32Array;
 }
 
 /** Why there is no even-face embedding. Every reason is a proof. */

@@ -25,7 +25,7 @@ import { planarRotation } from "../graph/planarity.ts";
 import { breadthFirst, isScattered } from "../graph/relabel.ts";
 import { twoColouring } from "../graph/two-colouring.ts";
 import type { Meter } from "../run/meter.ts";
-import { doubleCover, liftDart, liftRotation } from "./double-cover.ts";
+import { doubleCover, liftDart } from "./double-cover.ts";
 import { oddBlocks } from "./even-face-blocks.ts";
 import { isAntipodal, mirrorTwins, vertexOfAllOddCycles } from "./even-face-repair.ts";
 import type { EvenFaceResult, NoEvenFaceReason } from "./even-face-result.ts";
@@ -74,12 +74,7 @@ export function evenFaceEmbedding(
       signedEulerGenus(local.graph, { next, twisted }) !== 1
     ) throw new Error("the embedding found is not an even-face embedding");
     const moved = local.graph === graph ? next : translatedRotation(next, local);
-    return {
-      kind: "embedded",
-      next: moved,
-      cover: doubleCover(graph),
-      coverNext: liftRotation(moved),
-    };
+    return { kind: "embedded", graph, next: moved };
   }
   const { reason, culprit } = answer;
   if (culprit === undefined || options.witness === false) return { kind: "no", reason };
@@ -151,8 +146,13 @@ function sidesWithout(graph: Graph, v: number): Uint8Array | undefined {
 
 /** The graph as a part of itself. */
 function whole(graph: Graph): Subgraph {
-  const count = (length: number) => Int32Array.from({ length }, (_, i) => i);
-  return { graph, vertices: count(graph.n), edges: count(graph.m) };
+  return { graph, vertices: counted(graph.n), edges: counted(graph.m) };
+}
+
+function counted(length: number): Int32Array {
+  const numbers = new Int32Array(length);
+  for (let i = 0; i < length; i++) numbers[i] = i;
+  return numbers;
 }
 
 /** The edges marked with `mark`, and their ends. */

@@ -64,7 +64,7 @@ export function solveEmbedded(
   const { graph, weights } = piece;
   const { unit, step, costs, around } = inUnits(graph, weights, doubledCosts);
   const dual = directedDual(next);
-  const walk = sourceWalk(graph, dual, around, meter);
+  const walk = sourceWalk(graph, dual, costs, around, meter);
   const cycle = leastOneSidedCycle(graph, dual, costs, walk, step, meter);
   const chosen = stableSetOfCycle(graph, cycle.crossed);
 
@@ -101,22 +101,30 @@ export function solveEmbedded(
 
 /** Costs divided by what divides them all, and what one-sided cycles are equal modulo. */
 function inUnits(graph: Graph, weights: Float64Array, doubledCosts: Float64Array) {
-  let unit = 0, divisor = 0, most = 0;
-  for (let e = 0; e < graph.m; e++) unit = greatestCommonDivisor(doubledCosts[e], unit);
-  for (let v = 0; v < graph.n; v++) divisor = greatestCommonDivisor(weights[v], divisor);
-  const around = new Float64Array(graph.n);
+  const unit = greatestCommonDivisor(doubledCosts), divisor = greatestCommonDivisor(weights);
+  const around = new Float64Array(graph.n), units = new Float64Array(graph.m);
   for (let v = 0; v < graph.n; v++) around[v] = 2 * weights[v] / unit;
-  for (let e = 0; e < graph.m; e++) if (doubledCosts[e] > most) most = doubledCosts[e];
-  const costs = most / unit < 2 ** 31
-    ? Int32Array.from(doubledCosts, (c) => c / unit)
-    : Float64Array.from(doubledCosts, (c) => c / unit);
+  let most = 0;
+  for (let e = 0; e < graph.m; e++) {
+    units[e] = doubledCosts[e] / unit;
+    if (units[e] > most) most = units[e];
+  }
+  const costs = most < 2 ** 31 ? Int32Array.from(units) : units;
   // The cost of a cycle is w(V) - 2 w(x) for an integer vector x, see certify/projective.ts.
   return { unit, step: 2 * divisor / unit, costs, around };
 }
 
-function greatestCommonDivisor(a: number, b: number): number {
-  while (b !== 0) [a, b] = [b, a % b];
-  return a;
+/** Of a list of integers >= 0; 0 if all are 0. */
+function greatestCommonDivisor(list: Float64Array): number {
+  let divisor = 0;
+  for (let i = 0; i < list.length && divisor !== 1; i++) {
+    for (let a = list[i]; a !== 0;) {
+      const rest = divisor % a;
+      divisor = a;
+      a = rest;
+    }
+  }
+  return divisor;
 }
 
 function hasParallelEdges(graph: Graph): boolean {

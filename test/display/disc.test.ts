@@ -64,8 +64,7 @@ describe("layoutDisc", () => {
 
     it(`draws ${name} without crossings`, () => {
       const embedding = embedded(graph);
-      const { edges, x, y } = layoutDisc(embedding);
-      const { tails, heads } = embedding.cover;
+      const { cover: { tails, heads }, edges, x, y } = layoutDisc(embedding);
       const at = (v: number) => [x[v], y[v]];
       for (let i = 0; i < edges.length; i++) {
         for (let j = 0; j < i; j++) {

@@ -23,12 +23,10 @@ export interface Cotree {
  * Grows the tree, breadth first.
  *
  * @param graph H, connected and not bipartite
- * @param parent for each face of the sphere the dart whose arc enters it in the tree of faces, or -1
+ * @param crossed length 2m: 1 for the darts whose arcs are in the tree of faces, 0 for the others
  */
-export function cotreeOf(graph: Graph, parent: Int32Array): Cotree {
-  const { n, m, offsets, targets, edgeOf, tails } = graph;
-  const crossed = new Uint8Array(2 * m);
-  for (let x = 0; x < parent.length; x++) if (parent[x] >= 0) crossed[parent[x]] = 1;
+export function cotreeOf(graph: Graph, crossed: Uint8Array): Cotree {
+  const { n, offsets, targets, edgeOf, tails } = graph;
   // In the order in which they are met: the vertex, when that was for the one before it, and by what.
   const order = new Int32Array(2 * n), before = new Int32Array(2 * n), by = new Int32Array(2 * n);
   const met = new Uint8Array(2 * n);

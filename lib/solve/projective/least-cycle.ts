@@ -45,20 +45,22 @@ export function leastOneSidedCycle(
   step: number,
   meter: Meter,
 ): LeastCycle {
-  const { faces, positions } = walk;
+  const { faces, there, back } = walk;
   const paths = shortestPaths(dual, costs, faces[0], meter);
-  const range = positions[positions.length - 1];
+  let range = 0;
+  for (let i = 0; i < faces.length; i++) range += there[i] + back[i];
   const source = new MovingSource(graph, dual, costs, paths, faces[0], range);
   const antipode = faces[0] ^ 1;
   let cost = source.distance(antipode), crossed = source.path(antipode), moves = 0;
-  let at = 0, next = 1;
+  let next = 1, wayBack = 0;
   try {
     for (; next < faces.length; next++) {
       const x = faces[next];
+      wayBack += back[next];
       if (source.bound(x) > cost - step) continue;
-      source.move(x, positions[next] - positions[at], meter);
+      source.move(x, wayBack, meter);
       moves++;
-      at = next;
+      wayBack = 0;
       const found = source.distance(x ^ 1);
       if (found < cost) {
         cost = found;

@@ -29,21 +29,29 @@ import { cotreeOf } from "./cotree.ts";
 import type { DirectedDual } from "./directed-dual.ts";
 import type { ShortestPaths } from "./shortest-paths.ts";
 
-/** Fields of a cover vertex in `#links`. Its number is the place of the first, plus 1 if it is white. */
-const DART = 0, NEXT = 1, SLACK = 2, SINCE = 3, FIELDS = 4;
+/** Each cover vertex and each face has four fields. */
+const FIELDS = 4;
+/**
+ * Of a cover vertex: the dart of the edge it points along, the vertex it points at, the slack of the
+ * edge, and the level since when it is on the boundary. A vertex is named by the place of its first
+ * field, plus 1 if it is white.
+ */
+const DART = 0, NEXT = 1, SLACK = 2, SINCE = 3;
 /** In SINCE: not on the boundary; perhaps about to be. */
 const OFF = -1, MAYBE = -2;
+/**
+ * Of a face: the dart whose arc enters it in the tree, -1 at the source; the face where that comes from;
+ * the black and the white end of the edge it crosses.
+ */
+const ENTRY = 0, ABOVE = 1, BLACK = 2, WHITE = 3;
 
 export class MovingSource {
-  /** Length 2·pairs: the dart whose arc enters the face in the tree, -1 at the source. */
-  readonly #parent: Int32Array;
-  /**
-   * Length 8n: for each cover vertex the dart of the edge it points along, the vertex it points at, the
-   * slack of that edge, and the level since when the edge is on the boundary.
-   */
+  /** Length 8·pairs: the fields of face x from FIELDS·x on. */
+  readonly #faces: Int32Array;
+  /** Length 8n: the fields of cover vertices. */
   readonly #links: Int32Array | Float64Array;
-  /** Length 4m: the black end of the edge of dart d at 2d, the white end at 2d + 1. */
-  readonly #ends: Int32Array;
+  /** Length 4m: for dart d the face its arc enters at 2d, the face it leaves at 2d + 1. */
+  readonly #sides: Int32Array;
   readonly #queue: MonotoneQueue;
   /** While the source moves: the level, the largest one possible, and how far the new source was. */
   #level = 0;
@@ -53,28 +61,41 @@ export class MovingSource {
   #work = 0;
 
   /**
-   * @param paths shortest paths from the first source; left as they are
    * @param costs as for `shortestPaths`
-   * @param range no less than the limits of all moves together
+   * @param paths shortest paths from the first source
+   * @param range no less than what going there and back costs in all moves together
    * @param unitsPerTick units counted between two ticks of the meter
    */
   constructor(
     graph: Graph,
-    readonly dual: DirectedDual,
+    { pairs, left, right }: DirectedDual,
     readonly costs: Int32Array | Float64Array,
     paths: ShortestPaths,
     source: number,
     range: number,
     readonly unitsPerTick = 4096,
   ) {
-    const { tree, furthest } = paths;
-    this.#parent = new Int32Array(2 * dual.pairs);
-    for (let x = 0; x < this.#parent.length; x++) this.#parent[x] = tree[2 * x + 1];
+    const { n, m, tails, heads } = graph, { tree, furthest } = paths;
     this.#source = source;
+    this.#queue = range <= Math.max(1 << 16, pairs) ? new BucketQueue(range) : new HeapQueue();
+    const sides = this.#sides = new Int32Array(4 * m);
+    for (let d = 0; d < 2 * m; d++) {
+      sides[2 * d] = left[d];
+      sides[2 * d + 1] = right[d];
+    }
+    const crossed = new Uint8Array(2 * m);
+    for (let x = 0; x < 2 * pairs; x++) if (x !== source) crossed[tree[2 * x + 1]] = 1;
+    const { places, vertices, next, darts } = cotreeOf(graph, crossed);
 
-    const { n, m, tails, heads } = graph;
-    const { places, vertices, next, darts } = cotreeOf(graph, this.#parent);
-    const nameOf = (vertex: number) => FIELDS * places[vertex] + (vertex & 1);
+    const faces = this.#faces = new Int32Array(2 * pairs * FIELDS);
+    for (let x = 0; x < 2 * pairs; x++) {
+      const face = FIELDS * x, d = faces[face + ENTRY] = tree[2 * x + 1];
+      if (d < 0) continue;
+      const ends = (d & 1) === 0 ? tails : heads, others = (d & 1) === 0 ? heads : tails;
+      faces[face + ABOVE] = right[d];
+      faces[face + BLACK] = FIELDS * places[2 * ends[d >> 1]];
+      faces[face + WHITE] = FIELDS * places[2 * others[d >> 1] + 1] + 1;
+    }
     let dearest = 0;
     for (let e = 0; e < m; e++) if (costs[e] > dearest) dearest = costs[e];
     // A slack is at most a cost and a distance, and grows by no more than the moves.
@@ -86,29 +107,21 @@ export class MovingSource {
       links[link + NEXT] = d < 0 ? -1 : FIELDS * next[place] + (vertices[next[place]] & 1);
       links[link + SINCE] = OFF;
       if (d < 0) continue;
-      links[link + SLACK] = costs[d >> 1] + tree[2 * dual.right[d]] - tree[2 * dual.left[d]];
+      links[link + SLACK] = costs[d >> 1] + tree[2 * right[d]] - tree[2 * left[d]];
     }
     this.#links = links;
-    this.#ends = new Int32Array(4 * m);
-    for (let e = 0; e < m; e++) {
-      this.#ends[4 * e] = nameOf(2 * tails[e]);
-      this.#ends[4 * e + 1] = nameOf(2 * heads[e] + 1);
-      this.#ends[4 * e + 2] = nameOf(2 * heads[e]);
-      this.#ends[4 * e + 3] = nameOf(2 * tails[e] + 1);
-    }
-    this.#queue = range <= Math.max(1 << 16, dual.pairs) ? new BucketQueue(range) : new HeapQueue();
   }
 
   /** The distance from the source to a face. O(length of the path) time. */
   distance(x: number): number {
-    const parent = this.#parent, { right } = this.dual;
-    let sum = 0, root = x;
-    for (let d = parent[x]; d >= 0; d = parent[root]) {
-      sum += this.costs[d >> 1];
-      root = right[d];
+    const faces = this.#faces, costs = this.costs;
+    let sum = 0, face = FIELDS * x;
+    for (let d = faces[face + ENTRY]; d >= 0; d = faces[face + ENTRY]) {
+      sum += costs[d >> 1];
+      face = FIELDS * faces[face + ABOVE];
     }
     // While the source moves, the faces still below the former one rise with the level.
-    return sum + (root === this.#source ? this.#raised : this.#level);
+    return sum + (face === FIELDS * this.#source ? this.#raised : this.#level);
   }
 
   /** A lower bound for the distance between x and its antipode, which is the same both ways. */
@@ -118,10 +131,10 @@ export class MovingSource {
 
   /** The edges of H crossed on a shortest path from the source to a face. */
   path(x: number): number[] {
-    const crossed: number[] = [];
-    for (let d = this.#parent[x]; d >= 0; d = this.#parent[x]) {
+    const faces = this.#faces, crossed: number[] = [];
+    for (let d = faces[FIELDS * x + ENTRY]; d >= 0; d = faces[FIELDS * x + ENTRY]) {
       crossed.push(d >> 1);
-      x = this.dual.right[d];
+      x = faces[FIELDS * x + ABOVE];
     }
     return crossed;
   }
@@ -130,25 +143,23 @@ export class MovingSource {
    * Moves the source.
    *
    * @param to a face
-   * @param limit no less than what going from the source there and back costs
+   * @param back no less than the distance from there to the source
    * @param meter counts about one unit for each edge that comes to the boundary or leaves it
    * @throws {Interrupted} when the meter runs out; `bound` still holds then, but moving is over
    */
-  move(to: number, limit: number, meter: Meter): void {
-    const { left } = this.dual;
-    const parent = this.#parent, links = this.#links, ends = this.#ends, queue = this.#queue;
-    const first = parent[to];
-    if (first < 0) return;
+  move(to: number, back: number, meter: Meter): void {
+    const faces = this.#faces, links = this.#links, sides = this.#sides, queue = this.#queue;
+    if (to === this.#source) return;
     this.#raised = this.distance(to);
-    this.#limit = limit;
+    this.#limit = this.#raised + back;
     this.#source = to;
-    parent[to] = -1;
     queue.clear();
-    // New is to the left of the arc's own edge if that is walked from its black end.
-    const black = ends[2 * first];
-    this.#turn(black, -1, first, ends[2 * first + 1]);
-    let w = black;
-    do w = this.#enter(w); while (w !== black);
+    // The new faces are on the left of the edge of the arc cut if that is walked from its black end.
+    const cut = FIELDS * to, start = faces[cut + BLACK];
+    this.#turn(start, -1, faces[cut + ENTRY], faces[cut + WHITE]);
+    faces[cut + ENTRY] = -1;
+    let w = start;
+    do w = this.#enter(w); while (w !== start);
     for (;;) {
       if (this.#work >= this.unitsPerTick) {
         const work = this.#work;
@@ -161,14 +172,19 @@ export class MovingSource {
       // The vertex may point along another edge by now.
       if (since < 0 || since + links[link + SLACK] !== queue.key) continue;
       this.#level = queue.key;
-      const dart = links[link + DART], y = left[dart], former = parent[y];
-      parent[y] = dart;
+      const dart = links[link + DART], ahead = links[link + NEXT];
+      const face = FIELDS * sides[2 * dart];
+      const former = faces[face + ENTRY], black = faces[face + BLACK], beyond = faces[face + WHITE];
+      faces[face + ENTRY] = dart;
+      faces[face + ABOVE] = sides[2 * dart + 1];
+      faces[face + BLACK] = ahead;
+      faces[face + WHITE] = white;
       if (former >= 0) {
-        this.#reroute(white, former);
+        this.#reroute(white, ahead, former, black, beyond);
         continue;
       }
       // The former source: all faces are new, and the rest of the boundary is a path to `white`.
-      for (w = links[link + NEXT]; w !== white;) w = this.#leave(w);
+      for (w = ahead; w !== white;) w = this.#leave(w);
       links[link + DART] = links[link + NEXT] = -1;
       links[link + SINCE] = OFF;
       this.#level = this.#raised = 0;
@@ -177,16 +193,14 @@ export class MovingSource {
   }
 
   /**
-   * The edge that `white` points along goes to the tree, that of `former` to the cotree. This closes
-   * another cycle, which becomes the boundary.
+   * The edge along which `white` points to `ahead` goes to the tree, and that of the dart `former`, from
+   * `black` to `beyond`, to the cotree. This closes another cycle, which becomes the boundary.
    */
-  #reroute(white: number, former: number): void {
+  #reroute(white: number, ahead: number, former: number, black: number, beyond: number): void {
     const links = this.#links;
-    const black = this.#ends[2 * former], beyond = this.#ends[2 * former + 1];
-    let w = links[(white & ~1) + NEXT];
     // On the way to the boundary, then around it to `white`; the latter part leaves it.
     const joint = this.#turn(black, white, former, beyond);
-    let v = beyond;
+    let w = ahead, v = beyond;
     while (links[(v & ~1) + SINCE] === OFF) v = this.#enter(v);
     if (links[(v & ~1) + SINCE] === MAYBE) {
       // The ways from both ends meet before the boundary: the new one does not touch it.

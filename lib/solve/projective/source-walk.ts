@@ -2,8 +2,6 @@
  * Where least cycles are looked for: a closed one-sided walk through faces that share an edge. On the
  * projective plane every one-sided cycle of the dual meets it in a face, so its faces serve as sources.
  * O(m) time.
- *
- * From a face across an edge and back costs at most what going once around an end of the edge costs.
  */
 import type { Graph } from "../../graph/graph.ts";
 import type { Meter } from "../../run/meter.ts";
@@ -13,8 +11,10 @@ import type { DirectedDual } from "./directed-dual.ts";
 export interface SourceWalk {
   /** The faces passed, consecutive ones share an edge; the antipode at the end is left out. */
   readonly faces: Int32Array;
-  /** As long as `faces`: the bounds on going there and back, added up along the walk. */
-  readonly positions: Float64Array;
+  /** As long as `faces`: no less than the distance to each from the face before; 0 for the first. */
+  readonly there: Float64Array;
+  /** As long as `faces`: no less than the distance from each to the face before. */
+  readonly back: Float64Array;
 }
 
 /**
@@ -22,32 +22,35 @@ export interface SourceWalk {
  * antipode, the walk with the fewest.
  *
  * @param graph H
- * @param around length n, what the dual arcs around each vertex cost together, integers > 0
+ * @param costs length m, what the arcs across each edge cost
+ * @param around length n, what the arcs around each vertex cost together
  * @param meter counts one unit for each arc scanned
  */
 export function sourceWalk(
   graph: Graph,
   dual: DirectedDual,
+  costs: Int32Array | Float64Array,
   around: Float64Array,
   meter: Meter,
 ): SourceWalk {
   const first = fewestFaces(dual, 0, meter);
   const faces = fewestFaces(dual, first[first.length >> 1], meter);
-  const positions = new Float64Array(faces.length);
+  const there = new Float64Array(faces.length), back = new Float64Array(faces.length);
   for (let i = 1; i < faces.length; i++) {
-    positions[i] = positions[i - 1] + thereAndBack(faces[i - 1], faces[i]);
+    there[i] = stepFrom(faces[i - 1], faces[i]);
+    back[i] = stepFrom(faces[i], faces[i - 1]);
   }
-  return { faces, positions };
+  return { faces, there, back };
 
-  /** The least bound over the edges between two faces. */
-  function thereAndBack(x: number, y: number): number {
+  /** The least cost from a face over a common edge, or against its arc around one of the ends. */
+  function stepFrom(x: number, y: number): number {
     let least = Infinity;
-    for (const { offsets, ends, darts } of [dual.out, dual.into]) {
-      for (let a = offsets[x >> 1]; a < offsets[(x >> 1) + 1]; a++) {
-        if ((ends[a] ^ (x & 1)) !== y) continue;
-        const e = darts[a] >> 1;
-        least = Math.min(least, around[graph.tails[e]], around[graph.heads[e]]);
-      }
+    for (let a = dual.out.offsets[x >> 1]; a < dual.out.offsets[(x >> 1) + 1]; a++) {
+      const { out, into } = dual;
+      if ((out.ends[a] ^ (x & 1)) === y) least = Math.min(least, costs[out.darts[a] >> 1]);
+      if ((into.ends[a] ^ (x & 1)) !== y) continue;
+      const e = into.darts[a] >> 1;
+      least = Math.min(least, Math.min(around[graph.tails[e]], around[graph.heads[e]]) - costs[e]);
     }
     return least;
   }
