@@ -55,14 +55,18 @@ export function provenDistances(
   }
   const proven = new Float64Array(faces.length);
   const tree = new RehungTree(inner, dual, costs, faces[0], sum(there) + sum(back));
-  let wayBack = 0;
+  let exact = -Infinity, round = 0, wayBack = 0;
   for (let i = 0; i < faces.length; i++) {
     wayBack += back[i];
+    round += there[i] + back[i];
+    // From the root over this face and the antipodes of both is a way to the antipode of the root.
+    proven[i] = exact - round;
+    if (proven[i] >= wanted) continue;
     proven[i] = tree.apart(faces[i]);
     if (proven[i] >= wanted) continue;
     tree.rehang(faces[i], wayBack);
-    wayBack = 0;
-    proven[i] = tree.apart(faces[i]);
+    proven[i] = exact = tree.apart(faces[i]);
+    round = wayBack = 0;
   }
   tree.requireSums(load);
   return proven;
@@ -321,20 +325,22 @@ class RehungTree {
    */
   requireSums(load: Float64Array): void {
     const { targets, reverse } = this.inner, vertices = this.#vertices;
-    const sums = new Float64Array(vertices.length / RECORD), wanted = new Float64Array(sums.length);
+    const sums = new Float64Array(vertices.length / RECORD);
     for (let record = 0; record < vertices.length; record += RECORD) {
-      const d = vertices[record + EDGE], slack = vertices[record + SLACK];
-      if (d < 0) continue;
+      if (vertices[record + EDGE] < 0) continue;
+      const slack = vertices[record + SLACK];
       if (slack < 0) throw new Rejected("projective: a slack is negative");
-      const other = vertices[record + ONWARD];
       sums[record / RECORD] += slack;
-      sums[other >> 2] += slack;
-      const isWhite = (other & 1) === 0;
-      wanted[record / RECORD] = load[isWhite ? targets[d] : targets[reverse[d]]];
-      wanted[other >> 2] = load[isWhite ? targets[reverse[d]] : targets[d]];
+      sums[vertices[record + ONWARD] >> 2] += slack;
     }
-    if (sums.some((sum, i) => sum !== wanted[i])) {
-      throw new Rejected("projective: the slacks do not add up");
+    for (let record = 0; record < vertices.length; record += RECORD) {
+      const d = vertices[record + EDGE];
+      // The sum at the root is right if all others are: both colours have the same total.
+      if (d < 0) continue;
+      const isWhite = (vertices[record + ONWARD] & 1) === 0;
+      if (sums[record / RECORD] !== load[targets[isWhite ? d : reverse[d]]]) {
+        throw new Rejected("projective: the slacks do not add up");
+      }
     }
   }
 }

@@ -32,7 +32,7 @@ function someCase(random: Random): Case {
   const costs = someCosts(graph.m, random), dual = directedDual(next);
   const { sphere, left } = sphereOf(graph, next, costs);
   expect(sphere.faces).toBe(2 * dual.pairs);
-  const name = new Map(left.map((face, d) => [face, dual.left[d]]));
+  const name = new Map(left.map((face, d) => [face, dual.sides[2 * d]]));
   expect(name.size).toBe(sphere.faces);
   const arcs = sphere.arcs.map(([x, y, c]) => [name.get(x)!, name.get(y)!, c] as const);
   return { embedded, dual, costs, sphere: { faces: sphere.faces, arcs } };

@@ -22,10 +22,9 @@ export interface DirectedDual {
   readonly out: Arcs;
   /** The arcs into the even faces: `ends` are the faces they come from. */
   readonly into: Arcs;
-  /** Length 2m: the face of the sphere to the left of each dart of H, where its arc leads. */
-  readonly left: Int32Array;
-  /** Length 2m: the face where the arc across each dart comes from. */
-  readonly right: Int32Array;
+  /** Length 4m: the face where the arc of dart d leads, on the left of d, at 2d; at 2d + 1 that where it
+   * comes from. */
+  readonly sides: Int32Array;
 }
 
 /** Arcs at the even faces 2k, in rows; those at 2k + 1 are their antipodes. */
@@ -58,15 +57,22 @@ export function directedDual(next: Int32Array): DirectedDual {
     if (left[next[d]] < 0) traceFace(next[d]);
     if (left[prev[d]] < 0) traceFace(prev[d]);
   }
-  const right = new Int32Array(2 * m);
-  for (let d = 0; d < 2 * m; d++) right[d] = left[prev[d]];
+  const sides = new Int32Array(4 * m);
+  for (let d = 0; d < 2 * m; d++) {
+    sides[2 * d] = left[d];
+    sides[2 * d + 1] = left[prev[d]];
+  }
+  const heads = new Int32Array(m), tails = new Int32Array(m);
+  for (let a = 0; a < m; a++) {
+    heads[a] = sides[2 * out[a]];
+    tails[a] = sides[2 * into[a] + 1];
+  }
   const rows = offsets.slice(0, pairs + 1);
   return {
     pairs,
-    out: { offsets: rows, ends: out.map((d) => left[d]), darts: out },
-    into: { offsets: rows, ends: into.map((d) => right[d]), darts: into },
-    left,
-    right,
+    out: { offsets: rows, ends: heads, darts: out },
+    into: { offsets: rows, ends: tails, darts: into },
+    sides,
   };
 
   /** Numbers the face on the left of a dart and its antipode. */

@@ -52,18 +52,20 @@ export function leastOneSidedCycle(
   const source = new MovingSource(graph, dual, costs, paths, faces[0], range);
   const antipode = faces[0] ^ 1;
   let cost = source.distance(antipode), crossed = source.path(antipode), moves = 0;
-  let next = 1, wayBack = 0;
+  let exact = cost, round = 0, wayBack = 0, next = 1;
   try {
     for (; next < faces.length; next++) {
       const x = faces[next];
       wayBack += back[next];
-      if (source.bound(x) > cost - step) continue;
+      round += there[next] + back[next];
+      // From the source to x, on to x̄, and as from x back: a way to the antipode of the source.
+      if (exact - round > cost - step || source.bound(x) > cost - step) continue;
       source.move(x, wayBack, meter);
       moves++;
-      wayBack = 0;
-      const found = source.distance(x ^ 1);
-      if (found < cost) {
-        cost = found;
+      round = wayBack = 0;
+      exact = source.distance(x ^ 1);
+      if (exact < cost) {
+        cost = exact;
         crossed = source.path(x ^ 1);
       }
       meter.report("shortest one-sided cycle", { done: next, total: faces.length });

@@ -50,7 +50,7 @@ export class MovingSource {
   readonly #faces: Int32Array;
   /** Length 8n: the fields of cover vertices. */
   readonly #links: Int32Array | Float64Array;
-  /** Length 4m: for dart d the face its arc enters at 2d, the face it leaves at 2d + 1. */
+  /** As in `DirectedDual`. */
   readonly #sides: Int32Array;
   readonly #queue: MonotoneQueue;
   /** While the source moves: the level, the largest one possible, and how far the new source was. */
@@ -68,7 +68,7 @@ export class MovingSource {
    */
   constructor(
     graph: Graph,
-    { pairs, left, right }: DirectedDual,
+    { pairs, sides }: DirectedDual,
     readonly costs: Int32Array | Float64Array,
     paths: ShortestPaths,
     source: number,
@@ -78,11 +78,7 @@ export class MovingSource {
     const { n, m, tails, heads } = graph, { tree, furthest } = paths;
     this.#source = source;
     this.#queue = range <= Math.max(1 << 16, pairs) ? new BucketQueue(range) : new HeapQueue();
-    const sides = this.#sides = new Int32Array(4 * m);
-    for (let d = 0; d < 2 * m; d++) {
-      sides[2 * d] = left[d];
-      sides[2 * d + 1] = right[d];
-    }
+    this.#sides = sides;
     const crossed = new Uint8Array(2 * m);
     for (let x = 0; x < 2 * pairs; x++) if (x !== source) crossed[tree[2 * x + 1]] = 1;
     const { places, vertices, next, darts } = cotreeOf(graph, crossed);
@@ -92,7 +88,7 @@ export class MovingSource {
       const face = FIELDS * x, d = faces[face + ENTRY] = tree[2 * x + 1];
       if (d < 0) continue;
       const ends = (d & 1) === 0 ? tails : heads, others = (d & 1) === 0 ? heads : tails;
-      faces[face + ABOVE] = right[d];
+      faces[face + ABOVE] = sides[2 * d + 1];
       faces[face + BLACK] = FIELDS * places[2 * ends[d >> 1]];
       faces[face + WHITE] = FIELDS * places[2 * others[d >> 1] + 1] + 1;
     }
@@ -107,7 +103,7 @@ export class MovingSource {
       links[link + NEXT] = d < 0 ? -1 : FIELDS * next[place] + (vertices[next[place]] & 1);
       links[link + SINCE] = OFF;
       if (d < 0) continue;
-      links[link + SLACK] = costs[d >> 1] + tree[2 * right[d]] - tree[2 * left[d]];
+      links[link + SLACK] = costs[d >> 1] + tree[2 * sides[2 * d + 1]] - tree[2 * sides[2 * d]];
     }
     this.#links = links;
   }

@@ -25,7 +25,11 @@ export function proofOf(
   const { graph, labels } = piece;
   const { n, m, offsets } = graph;
   // Darts in certificate order: by the label where they start, then by the label where they end.
-  const byLabel = Int32Array.from({ length: n }, (_, v) => v).sort((u, v) => labels[u] - labels[v]);
+  const byLabel = new Int32Array(n);
+  for (let v = 0; v < n; v++) byLabel[v] = v;
+  if (labels.some((label, v) => v > 0 && label < labels[v - 1])) {
+    byLabel.sort((u, v) => labels[u] - labels[v]);
+  }
   const begin = new Int32Array(n);
   for (let i = 0, at = 0; i < n; i++) {
     begin[byLabel[i]] = at;
@@ -55,7 +59,7 @@ export function proofOf(
     }
   }
   const dartOf = new Int32Array(2 * dual.pairs);
-  for (let p = 2 * m - 1; p >= 0; p--) dartOf[dual.left[dartAt[p]]] = p;
+  for (let p = 2 * m - 1; p >= 0; p--) dartOf[dual.sides[2 * dartAt[p]]] = p;
   return {
     rule: "projective",
     unit,
