@@ -7,12 +7,14 @@ import process from "node:process";
 import { blocksBench } from "./blocks.bench.ts";
 import { branchBench } from "./branch.bench.ts";
 import { kernelBench } from "./kernel.bench.ts";
+import { planarityBench } from "./planarity.bench.ts";
 import { projectiveBench } from "./projective.bench.ts";
 
 const benches: Readonly<Record<string, (timeLimitMs: number) => Promise<unknown>>> = {
   blocks: (timeLimitMs) => blocksBench(timeLimitMs),
   branch: (timeLimitMs) => branchBench(timeLimitMs),
   kernel: () => Promise.resolve(kernelBench()),
+  planarity: () => Promise.resolve(planarityBench()),
   projective: (timeLimitMs) => projectiveBench(timeLimitMs),
 };
 
