@@ -153,15 +153,16 @@ export interface BlockReplacement {
 }
 
 /**
- * An embedding in the projective plane with all faces even, and searches in its dual that show how
- * much slack every stable set has. `certify/projective.ts` says why this proves a bound.
+ * An embedding in the projective plane with all faces even, and a one-sided walk through its faces: how
+ * far these are from their antipodes bounds the slack of every stable set. `certify/projective.ts` says
+ * why this proves a bound.
  *
  * H is the graph on the vertices of the part. Its vertices are taken in increasing order, and the
  * *darts* out of each to its neighbours inside the part in increasing order: 2m darts in all.
  */
 export interface ProjectiveProof {
   readonly rule: "projective";
-  /** What `costs`, `distance` and `limits` are multiplied by, an integer >= 1. */
+  /** What `costs` and `distance` are multiplied by, an integer >= 1. */
   readonly unit: number;
   /**
    * Length m, edges in order of their first dart: doubled costs c in units, integers >= 0, with

@@ -48,9 +48,9 @@ describe("MovingSource", () => {
       const there = (s: number, t: number) => all[s][t] + all[t][s];
       const range = stops.reduce((sum, x, k) => k > 0 ? sum + there(stops[k - 1], x) : 0, 0);
       const paths = shortestPaths(dual, costs, stops[0], new Meter());
-      const source = new MovingSource(graph, dual, costs, paths, stops[0], range);
+      const source = new MovingSource(graph, dual, costs, paths, stops[0], range, new Meter());
       stops.forEach((x, k) => {
-        if (k > 0) source.move(x, all[x][stops[k - 1]], new Meter());
+        if (k > 0) source.move(x, all[x][stops[k - 1]]);
         expect(Array.from(all, (_, y) => source.distance(y))).toEqual(all[x]);
         const y = random.below(sphere.faces);
         expect(source.path(y).reduce((sum, e) => sum + costs[e], 0)).toBe(all[x][y]);
@@ -68,14 +68,14 @@ describe("MovingSource", () => {
       const [s, t] = [random.below(sphere.faces), random.below(sphere.faces)];
       const limit = distancesFrom(sphere, s)[t] + distancesFrom(sphere, t)[s];
       const paths = shortestPaths(dual, costs, s, new Meter());
-      const source = new MovingSource(graph, dual, costs, paths, s, limit, 1);
-      let left = random.below(12);
       const meter = new Meter();
+      const source = new MovingSource(graph, dual, costs, paths, s, limit, meter, 1);
+      let left = random.below(12);
       meter.tick = () => {
         if (--left < 0) throw new Interrupted("stop");
       };
       try {
-        source.move(t, distancesFrom(sphere, t)[s], meter);
+        source.move(t, distancesFrom(sphere, t)[s]);
       } catch (error) {
         expect(error).toBeInstanceOf(Interrupted);
         interrupted++;

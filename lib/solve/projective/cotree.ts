@@ -3,6 +3,10 @@
  * does not cross. O(n + m) time.
  */
 import type { Graph } from "../../graph/graph.ts";
+import type { Meter } from "../../run/meter.ts";
+
+/** Vertices met between two ticks of the meter. */
+const VERTICES_PER_TICK = 4096;
 
 /**
  * A rooted tree. Its vertices have places 0 … 2n - 1, the root place 0. Every vertex has its largest
@@ -23,9 +27,10 @@ export interface Cotree {
  * Grows the tree, breadth first.
  *
  * @param graph H, connected and not bipartite
+ * @param meter counts one unit for each arc of the cover
  * @param crossed length 2m: 1 for the darts whose arcs are in the tree of faces, 0 for the others
  */
-export function cotreeOf(graph: Graph, crossed: Uint8Array): Cotree {
+export function cotreeOf(graph: Graph, crossed: Uint8Array, meter: Meter): Cotree {
   const { n, offsets, targets, edgeOf, tails } = graph;
   // In the order in which they are met: the vertex, when that was for the one before it, and by what.
   const order = new Int32Array(2 * n), before = new Int32Array(2 * n), by = new Int32Array(2 * n);
@@ -35,6 +40,7 @@ export function cotreeOf(graph: Graph, crossed: Uint8Array): Cotree {
   let tail = 1;
   for (let head = 0; head < tail; head++) {
     const v = order[head] >> 1, white = order[head] & 1;
+    if (head % VERTICES_PER_TICK === 0) meter.tick(2 * VERTICES_PER_TICK);
     for (let a = offsets[v]; a < offsets[v + 1]; a++) {
       const e = edgeOf[a], y = 2 * targets[a] + 1 - white;
       // The dart from the black end to the white one.
@@ -54,6 +60,7 @@ export function cotreeOf(graph: Graph, crossed: Uint8Array): Cotree {
     size[k] += size[i];
     if (largest[k] < 0 || size[i] > size[largest[k]]) largest[k] = i;
   }
+  meter.tick(2 * n);
   const place = new Int32Array(2 * n), free = new Int32Array(2 * n);
   const places = new Int32Array(2 * n), vertices = new Int32Array(2 * n);
   const next = new Int32Array(2 * n), darts = new Int32Array(2 * n);

@@ -10,7 +10,7 @@ import type { Graph } from "../../graph/graph.ts";
 import { Interrupted, type Meter } from "../../run/meter.ts";
 import type { DirectedDual } from "./directed-dual.ts";
 import { MovingSource } from "./moving-source.ts";
-import { shortestPaths } from "./shortest-paths.ts";
+import { edgesTo, shortestPaths } from "./shortest-paths.ts";
 import type { SourceWalk } from "./source-walk.ts";
 
 /** The answer. */
@@ -47,20 +47,22 @@ export function leastOneSidedCycle(
 ): LeastCycle {
   const { faces, there, back } = walk;
   const paths = shortestPaths(dual, costs, faces[0], meter);
-  let range = 0;
-  for (let i = 0; i < faces.length; i++) range += there[i] + back[i];
-  const source = new MovingSource(graph, dual, costs, paths, faces[0], range);
-  const antipode = faces[0] ^ 1;
-  let cost = source.distance(antipode), crossed = source.path(antipode), moves = 0;
-  let exact = cost, round = 0, wayBack = 0, next = 1;
+  let boundOf = (x: number) => Math.abs(paths.tree[2 * x] - paths.tree[2 * (x ^ 1)]);
+  let cost = paths.tree[2 * (faces[0] ^ 1)], crossed = edgesTo(faces[0] ^ 1, paths, dual);
+  let moves = 0, next = 1;
   try {
+    let range = 0;
+    for (let i = 0; i < faces.length; i++) range += there[i] + back[i];
+    const source = new MovingSource(graph, dual, costs, paths, faces[0], range, meter);
+    boundOf = (x) => source.bound(x);
+    let exact = cost, round = 0, wayBack = 0;
     for (; next < faces.length; next++) {
       const x = faces[next];
       wayBack += back[next];
       round += there[next] + back[next];
-      // From the source to x, on to x̄, and as from x back: a way to the antipode of the source.
+      // From the source to x, on to x̄, and from there as from x back: a way to the source's antipode.
       if (exact - round > cost - step || source.bound(x) > cost - step) continue;
-      source.move(x, wayBack, meter);
+      source.move(x, wayBack);
       moves++;
       round = wayBack = 0;
       exact = source.distance(x ^ 1);
@@ -73,7 +75,7 @@ export function leastOneSidedCycle(
   } catch (error) {
     if (!(error instanceof Interrupted)) throw error;
     let atLeast = cost;
-    for (; next < faces.length; next++) atLeast = Math.min(atLeast, source.bound(faces[next]));
+    for (; next < faces.length; next++) atLeast = Math.min(atLeast, boundOf(faces[next]));
     return { cost, atLeast, crossed, moves };
   }
   return { cost, atLeast: cost, crossed, moves };

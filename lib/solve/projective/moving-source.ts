@@ -64,7 +64,10 @@ export class MovingSource {
    * @param costs as for `shortestPaths`
    * @param paths shortest paths from the first source
    * @param range no less than what going there and back costs in all moves together
-   * @param unitsPerTick units counted between two ticks of the meter
+   * @param meter counts one unit for each arc, and in moving about one for each edge that comes to the
+   *   boundary or leaves it
+   * @param unitsPerTick units counted between two ticks of it
+   * @throws {Interrupted} when the meter runs out
    */
   constructor(
     graph: Graph,
@@ -73,6 +76,7 @@ export class MovingSource {
     paths: ShortestPaths,
     source: number,
     range: number,
+    readonly meter: Meter,
     readonly unitsPerTick = 4096,
   ) {
     const { n, m, tails, heads } = graph, { tree, furthest } = paths;
@@ -81,8 +85,9 @@ export class MovingSource {
     this.#sides = sides;
     const crossed = new Uint8Array(2 * m);
     for (let x = 0; x < 2 * pairs; x++) if (x !== source) crossed[tree[2 * x + 1]] = 1;
-    const { places, vertices, next, darts } = cotreeOf(graph, crossed);
+    const { places, vertices, next, darts } = cotreeOf(graph, crossed, meter);
 
+    meter.tick(2 * pairs);
     const faces = this.#faces = new Int32Array(2 * pairs * FIELDS);
     for (let x = 0; x < 2 * pairs; x++) {
       const face = FIELDS * x, d = faces[face + ENTRY] = tree[2 * x + 1];
@@ -92,6 +97,7 @@ export class MovingSource {
       faces[face + BLACK] = FIELDS * places[2 * ends[d >> 1]];
       faces[face + WHITE] = FIELDS * places[2 * others[d >> 1] + 1] + 1;
     }
+    meter.tick(2 * n);
     let dearest = 0;
     for (let e = 0; e < m; e++) if (costs[e] > dearest) dearest = costs[e];
     // A slack is at most a cost and a distance, and grows by no more than the moves.
@@ -140,10 +146,9 @@ export class MovingSource {
    *
    * @param to a face
    * @param back no less than the distance from there to the source
-   * @param meter counts about one unit for each edge that comes to the boundary or leaves it
    * @throws {Interrupted} when the meter runs out; `bound` still holds then, but moving is over
    */
-  move(to: number, back: number, meter: Meter): void {
+  move(to: number, back: number): void {
     const faces = this.#faces, links = this.#links, sides = this.#sides, queue = this.#queue;
     if (to === this.#source) return;
     this.#raised = this.distance(to);
@@ -160,7 +165,7 @@ export class MovingSource {
       if (this.#work >= this.unitsPerTick) {
         const work = this.#work;
         this.#work = 0;
-        meter.tick(work);
+        this.meter.tick(work);
       }
       const white = queue.pop();
       if (white < 0) throw new Error("internal: moving the source passes its limit");

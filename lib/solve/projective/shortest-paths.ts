@@ -79,3 +79,13 @@ export function shortestPaths(
     return { tree, furthest };
   }
 }
+
+/** The edges of H that a shortest path to a face crosses, from its end to its start. */
+export function edgesTo(x: number, { tree }: ShortestPaths, { sides }: DirectedDual): number[] {
+  const crossed: number[] = [];
+  for (let d = tree[2 * x + 1]; d >= 0; d = tree[2 * x + 1]) {
+    crossed.push(d >> 1);
+    x = sides[2 * d + 1];
+  }
+  return crossed;
+}
