@@ -67,12 +67,13 @@ export function evenFaceEmbedding(
     // The signature says that the cover is this rotation and its mirror image; so the cover lies in
     // the sphere exactly if H lies in the projective plane.
     const twisted = new Uint8Array(graph.m).fill(1);
-    meter.tick(8 * graph.m);
     const { next } = answer;
-    if (
-      !isRotationSystem(local.graph, next) ||
-      signedEulerGenus(local.graph, { next, twisted }) !== 1
-    ) throw new Error("the embedding found is not an even-face embedding");
+    meter.tick(4 * graph.m);
+    const isRotation = isRotationSystem(local.graph, next);
+    meter.tick(4 * graph.m);
+    if (!isRotation || signedEulerGenus(local.graph, { next, twisted }) !== 1) {
+      throw new Error("the embedding found is not an even-face embedding");
+    }
     const moved = local.graph === graph ? next : translatedRotation(next, local);
     return { kind: "embedded", graph, next: moved };
   }

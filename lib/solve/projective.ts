@@ -63,7 +63,7 @@ export function solveEmbedded(
 ): Solved {
   const { graph, weights } = piece;
   const { unit, step, costs, around } = inUnits(graph, weights, doubledCosts);
-  const dual = directedDual(next);
+  const dual = directedDual(next, meter);
   const walk = sourceWalk(graph, dual, costs, around, meter);
   const cycle = leastOneSidedCycle(graph, dual, costs, walk, step, meter);
   const chosen = stableSetOfCycle(graph, cycle.crossed);

@@ -29,7 +29,7 @@ interface Case {
 function someCase(random: Random): Case {
   const embedded = smallEvenFace(random, 20);
   const { graph, next } = embedded;
-  const costs = someCosts(graph.m, random), dual = directedDual(next);
+  const costs = someCosts(graph.m, random), dual = directedDual(next, new Meter());
   const { sphere, left } = sphereOf(graph, next, costs);
   expect(sphere.faces).toBe(2 * dual.pairs);
   const name = new Map(left.map((face, d) => [face, dual.sides[2 * d]]));

@@ -10,6 +10,10 @@
  * the arc across dart d leads from the corner before d to the corner after it.
  */
 import { mirrored } from "../../graph/embedding.ts";
+import type { Meter } from "../../run/meter.ts";
+
+/** Darts walked between two ticks of the meter. */
+const DARTS_PER_TICK = 4096;
 
 /**
  * The faces of the sphere are 0 … 2·pairs - 1; faces x and x ^ 1 are antipodes. Arcs are kept at the
@@ -42,8 +46,10 @@ export interface Arcs {
  *
  * @param next length 2m, m > 0, the rotation system of an even-face embedding of a connected graph
  *   (every edge twisted), as in graph/embedding.ts
+ * @param meter counts two units for each dart
+ * @throws {Interrupted} when the meter runs out
  */
-export function directedDual(next: Int32Array): DirectedDual {
+export function directedDual(next: Int32Array, meter: Meter): DirectedDual {
   const m = next.length / 2;
   const prev = mirrored(next);
   const left = new Int32Array(2 * m).fill(-1);
@@ -54,9 +60,11 @@ export function directedDual(next: Int32Array): DirectedDual {
   traceFace(0);
   for (let head = 0; head < tail; head++) {
     const d = into[head];
+    if (head % DARTS_PER_TICK === 0) meter.tick(2 * DARTS_PER_TICK);
     if (left[next[d]] < 0) traceFace(next[d]);
     if (left[prev[d]] < 0) traceFace(prev[d]);
   }
+  meter.tick(2 * m);
   const sides = new Int32Array(4 * m);
   for (let d = 0; d < 2 * m; d++) {
     sides[2 * d] = left[d];
