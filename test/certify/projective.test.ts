@@ -128,6 +128,20 @@ describe("projectiveBound", () => {
     );
   });
 
+  it("rejects costs whose sums might be rounded", () => {
+    const heavy = (scale: number): Case => ({
+      ...base,
+      weights: weights.map((weight) => weight * scale),
+      proof: { ...proof, costs: proof.costs.map((cost) => cost * scale), distance: 0 },
+    });
+    const total = weights.reduce((sum, weight) => sum + 2 * weight / proof.unit, 0);
+    const scale = 2 ** Math.floor(Math.log2(2 ** 51 / total));
+    expect(typeof verdict(heavy(scale), () => {})).toBe("number");
+    expect(verdict(heavy(2 * scale), () => {})).toMatch(
+      /^projective: the costs add up to \d+, more than 2251799813685248$/,
+    );
+  });
+
   it("rejects a distance that is too large, and proves less from one too small", () => {
     expect(verdict(base, (p) => p.distance += step)).toMatch(
       /^projective: the distance \d+ is not proved at source \d+, where the tree of paths proves \d+$/,

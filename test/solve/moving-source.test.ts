@@ -11,9 +11,10 @@ import { shortestPaths } from "../../lib/solve/projective/shortest-paths.ts";
 import { distancesFrom, type Sphere, sphereOf } from "../oracle/sphere-distances.ts";
 import { type EmbeddedGraph, smallEvenFace } from "../support/even-face.ts";
 
-/** Costs of all kinds: many zeros, also all around a vertex; few sizes; many; beyond 32 bits. */
+/** Costs of all kinds: many zeros, also all around a vertex; few sizes; many; large, so that sums or
+ * costs themselves pass 32 bits. */
 function someCosts(m: number, random: Random): Int32Array | Float64Array {
-  const below = [2, 4, 20, 1000, 2 ** 40][random.below(5)], zeros = random.below(3);
+  const below = [2, 4, 20, 1000, 2 ** 30, 2 ** 40][random.below(6)], zeros = random.below(3);
   const costs = Array.from({ length: m }, () => random.below(3) < zeros ? 0 : random.below(below));
   return below < 2 ** 31 ? Int32Array.from(costs) : Float64Array.from(costs);
 }
