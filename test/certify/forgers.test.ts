@@ -211,7 +211,7 @@ describe("a forger with a plan never gets below the optimum", () => {
     expect(sums).toEqual({ started: 150, tight: 150 });
   });
 
-  it("by embeddings: any rotations, few sources, any searches, the distance raised", () => {
+  it("by embeddings: any rotations, any walks of sources, the distance raised", () => {
     const random = new Random(203), sums = tally();
     for (let run = 0; run < 600; run++) {
       const graph = randomConnectedGraph(random, 3 + random.below(4), 1 + random.below(4));
