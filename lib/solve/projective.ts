@@ -77,7 +77,7 @@ export function solveEmbedded(
     faces: dual.pairs,
     slack: unit * cycle.cost / 2,
     sources: walk.faces.length,
-    moves: cycle.moves,
+    distances: 1 + cycle.moves,
   };
   // Clamping may gain where the cycle is not a least one.
   if (2 * weight < total - unit * cycle.cost) throw mismatch();

@@ -35,7 +35,7 @@ export interface ProjectiveRow {
   readonly check: number;
   /** (kernel + engine + check) / kernel. */
   readonly ratio: number;
-  readonly moves: number;
+  readonly distances: number;
   /** HiGHS on edge rows; absent where it was not run. */
   readonly highs?: number;
   /** What HiGHS ended with. */
@@ -90,7 +90,7 @@ export async function projectiveBench(
   return rows;
 }
 
-type Timed = Pick<ProjectiveRow, "weight" | "kernel" | "engine" | "search" | "check" | "moves">;
+type Timed = Pick<ProjectiveRow, "weight" | "kernel" | "engine" | "search" | "check" | "distances">;
 
 function timed(graph: Graph, weights: Float64Array): Timed {
   const started = performance.now();
@@ -120,7 +120,7 @@ function timed(graph: Graph, weights: Float64Array): Timed {
     engine,
     search: searchAlone(graph, weights, doubledCosts),
     check,
-    moves: Number(answer.figures.moves),
+    distances: Number(answer.figures.distances),
   };
 }
 
@@ -161,7 +161,7 @@ async function highsOn(
   };
 }
 
-const HEAD = "        n    kernel    engine  (search)    check  ratio     moves" +
+const HEAD = "        n    kernel    engine  (search)    check  ratio distances" +
   "     HiGHS  HiGHS/(kernel+engine)   peak MB  weight (HiGHS)";
 
 /** One line of the table as text. */
@@ -184,7 +184,7 @@ function lineOf(row: ProjectiveRow): string {
     ms(row.search, 9),
     ms(row.check, 9),
     row.ratio.toFixed(2).padStart(6),
-    String(row.moves).padStart(9),
+    String(row.distances).padStart(9),
     ms(row.highs, 9),
     factor.padStart(22),
     row.peakMegabytes.toFixed(0).padStart(9),
