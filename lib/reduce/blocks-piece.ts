@@ -162,7 +162,13 @@ export function blockReplacements(
 /** For each entry, how many are smaller; the entries are distinct. */
 function ranksOf(labels: Int32Array): Int32Array {
   const sorted = labels.slice().sort();
-  const rank = new Map<number, number>();
-  for (let i = 0; i < sorted.length; i++) rank.set(sorted[i], i);
-  return Int32Array.from(labels, (label) => rank.get(label)!);
+  return labels.map((label) => {
+    let low = 0, high = sorted.length;
+    while (low + 1 < high) {
+      const middle = (low + high) >> 1;
+      if (sorted[middle] <= label) low = middle;
+      else high = middle;
+    }
+    return low;
+  });
 }

@@ -1,8 +1,9 @@
 /**
- * Solves one connected piece: bipartite blocks are replaced by gadgets, then each piece that is left
- * goes to the first engine that takes it. The cheap special engines come first and decline with
- * a reason where they do not apply; branch and bound takes what is left, first alone under a budget
- * of work, then with the help of a floating-point solver's solutions, then until it is done.
+ * Solves one connected piece. The engines of near-linear time are asked first; looking for bipartite
+ * blocks takes longer than either. Where they decline, blocks are replaced by gadgets, and each piece
+ * that is left goes to the first engine that takes it. Special engines come first and decline with a
+ * reason where they do not apply; branch and bound takes what is left, first alone under a budget of
+ * work, then with the help of a floating-point solver's solutions, then until it is done.
  */
 import { type CombinedAnswer, type ReducedPiece, reducePiece } from "../reduce/blocks-piece.ts";
 import { Interrupted, Meter } from "../run/meter.ts";
@@ -14,12 +15,12 @@ import { mip } from "./mip.ts";
 import { solveProjective } from "./projective.ts";
 import { solveByTransversal } from "./transversal.ts";
 
-/** The special engines, in the order in which they are asked. */
-const SPECIAL: readonly (readonly [EngineName, Engine])[] = [
-  ["bipartite", solveBipartite],
-  ["projective", solveProjective],
-  ["transversal", solveByTransversal],
-];
+/** Engines by name, in the order in which they are asked. */
+type Asked = readonly (readonly [EngineName, Engine])[];
+/** The special engines of near-linear time. */
+const FAST: Asked = [["bipartite", solveBipartite], ["projective", solveProjective]];
+/** All special engines. */
+const SPECIAL: Asked = [...FAST, ["transversal", solveByTransversal]];
 
 /** Work of branch and bound before HiGHS is asked for a better start: about 15 s. */
 const FIRST_BRANCH_WORK = 2 ** 32;
@@ -46,6 +47,8 @@ export async function solvePiece(
   only: EngineName | undefined,
   meter: Meter,
 ): Promise<PieceResult> {
+  const atOnce = await ask(FAST, piece, only, meter);
+  if (atOnce.solved !== undefined) return atOnce;
   const reduced = withoutBlocks(piece, meter);
   if (reduced === undefined) return await byEngines(piece, only, meter);
   const { pieces, figures } = reduced;
@@ -63,6 +66,7 @@ export async function solvePiece(
   return {
     engine: engines.length === 0 ? "blocks" : engines.join(" + "),
     why: [
+      ...atOnce.why.map((reason) => `with its blocks, ${reason}`),
       `${figures.blocks} bipartite blocks replaced: ${figures.verticesLeft} vertices left of ` +
       `${piece.graph.n}`,
       ...new Set(results.flatMap((r) => r.why)),
@@ -91,14 +95,15 @@ function withStatus(answer: CombinedAnswer): CombinedAnswer & { status: Solved["
   return { ...answer, status: answer.proof === undefined ? "feasible" : "optimal" };
 }
 
-/** Asks the engines in turn. */
-async function byEngines(
+/** Asks engines in turn until one does not decline. */
+async function ask(
+  engines: Asked,
   piece: Piece,
   only: EngineName | undefined,
   meter: Meter,
-): Promise<PieceResult> {
+): Promise<PieceResult | { readonly why: string[]; readonly solved?: undefined }> {
   const why: string[] = [];
-  for (const [name, engine] of SPECIAL) {
+  for (const [name, engine] of engines) {
     if (only !== undefined && only !== name) continue;
     if (meter.interruption !== undefined) break;
     const answer = await asked(engine, piece, meter);
@@ -106,6 +111,18 @@ async function byEngines(
     if (answer.status !== "declined") return { engine: name, why, solved: answer };
     why.push(`${name} declined: ${answer.reason}`);
   }
+  return { why };
+}
+
+/** Asks the engines in turn; the last ones take everything. */
+async function byEngines(
+  piece: Piece,
+  only: EngineName | undefined,
+  meter: Meter,
+): Promise<PieceResult> {
+  const special = await ask(SPECIAL, piece, only, meter);
+  if (special.solved !== undefined) return special;
+  const { why } = special;
   if (meter.interruption === undefined) {
     if (only === undefined) return await byBranching(piece, meter, why);
     if (only === "branch") return { engine: only, why, solved: await branch(piece, meter) };

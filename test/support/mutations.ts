@@ -86,7 +86,11 @@ export async function honest(kind: typeof KINDS[number], random: Random): Promis
     }
     case "lifted": {
       const [rows, columns] = random.below(2) === 0 ? [3, 3] : [4, 2];
-      const graph = gridWithBlocks(random, rows, columns, { blocks: 2, size: 5 });
+      // Blocks on any vertices keep what is left from being drawn at once: it is replaced in turn.
+      const core = gridWithBlocks(random, rows, columns, { blocks: 2, size: 5 });
+      const graph = random.below(2) === 0
+        ? core
+        : withBlocks(random, core, { blocks: 2, size: 5, nested: true }).graph;
       const instance = instanceOf(graph, hardOrPlain(graph, random));
       const replaced = await replaceBlocks(await decompose(instance, { workers: 0 }));
       const small = await solve(replaced.instance, { workers: 0 });
