@@ -75,14 +75,14 @@ export async function dispatch(problem: Problem, meter: Meter): Promise<Outcome>
   const subgraphs = componentSubgraphs(graph, half);
   const relaxed = new Float64Array(subgraphs.length);
   const pieces = subgraphs.map(({ graph: sub, vertices, edges }, i): Piece => {
-    const pieceWeights = Float64Array.from(vertices, (v) => weights[v]);
+    const pieceWeights = picked(weights, vertices);
     // All-half is optimal on a component of the kernel: half its weight bounds it.
     relaxed[i] = Math.floor(sum(pieceWeights) / 2);
     return {
       graph: sub,
       weights: pieceWeights,
-      labels: Int32Array.from(vertices, (v) => labels[v]),
-      doubledCosts: Float64Array.from(edges, (e) => doubledCosts[e]),
+      labels: vertices.map((v) => labels[v]),
+      doubledCosts: picked(doubledCosts, edges),
     };
   });
   let lower = sum(parts.map((part) => part.weight));
@@ -207,6 +207,12 @@ export function certificateParts(parts: readonly OutcomePart[]): CertificatePart
     if (proof === undefined) throw new Error("a part without a proof cannot be certified");
     return { vertices, bound: upperBound, proof };
   });
+}
+
+function picked(values: Float64Array, places: Int32Array): Float64Array {
+  const some = new Float64Array(places.length);
+  for (let i = 0; i < places.length; i++) some[i] = values[places[i]];
+  return some;
 }
 
 function sum(values: ArrayLike<number>): number {
