@@ -10,6 +10,7 @@ import { Rejected } from "./rejected.ts";
 
 /** No sum of loads may be larger, so that every sum below is exact. */
 const MOST_LOAD = 2 ** 51;
+
 /**
  * Lower bounds for the distances between the faces of the walk and their antipodes.
  *
@@ -41,7 +42,8 @@ export function provenDistances(
   for (let i = 0; i < faces.length; i++) {
     wayBack += back[i];
     round += there[i] + back[i];
-    // From the root over this face and the antipodes of both is a way to the antipode of the root.
+    // From the root to this face, on to its antipode, and from there as from the face back to the root:
+    // a way to the antipode of the root.
     proven[i] = exact - round;
     if (proven[i] >= wanted) continue;
     proven[i] = tree.apart(faces[i]);

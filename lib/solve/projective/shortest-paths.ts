@@ -44,13 +44,12 @@ export function shortestPaths(
   }
   return run(new Float64Array(4 * pairs), new Float64Array(2 * ends.length), Infinity)!;
 
-  /** Nothing if a distance comes to `ceiling`. Ends and costs of arcs stand side by side like `tree`. */
-  function run<T extends Int32Array | Float64Array>(tree: T, arcs: T, ceiling: number) {
+  /** Nothing if a distance comes to `unreached`. Ends and costs stand side by side, as in `tree`. */
+  function run<T extends Int32Array | Float64Array>(tree: T, arcs: T, unreached: number) {
     for (let a = 0; a < ends.length; a++) {
       arcs[2 * a] = ends[a];
       arcs[2 * a + 1] = costs[darts[a] >> 1];
     }
-    const unreached = Math.min(ceiling, Infinity);
     for (let x = 0; x < 2 * pairs; x++) tree[2 * x] = unreached;
     tree[2 * source] = 0;
     tree[2 * source + 1] = -1;
