@@ -1,6 +1,7 @@
 /**
- * The projective part of an instance as a picture: what the half-integral relaxation and the block
- * replacement leave of it, drawn in a disc with opposite boundary points identified.
+ * The projective part of an instance as a picture: what the half-integral relaxation leaves of it,
+ * drawn in a disc with opposite boundary points identified. As in solving, blocks are replaced only
+ * where the part cannot be drawn as it stands.
  */
 import type { Solution } from "../certify/solution.ts";
 import { componentSubgraphs } from "../graph/components.ts";
@@ -121,15 +122,17 @@ function largestProjectivePart(instance: Instance, meter: Meter): ProjectivePart
       labels: Int32Array.from(vertices.keys()),
       doubledCosts: Float64Array.from(edges, (e) => doubledCosts[e]),
     };
-    for (const { graph, labels } of reducePiece(whole, meter)?.pieces ?? [whole]) {
+    const itemOf = (labels: Int32Array) =>
+      labels.map((id) => id < vertices.length ? positive.vertices[vertices[id]] : -1);
+    const embedding = evenFaceEmbedding(graph, meter, { witness: false });
+    if (embedding.kind === "embedded") {
+      best = { graph, embedding, itemOf: itemOf(whole.labels) };
+      continue;
+    }
+    for (const { graph, labels } of reducePiece(whole, meter)?.pieces ?? []) {
       if (graph.n <= (best?.graph.n ?? 0)) continue;
-      const embedding = evenFaceEmbedding(graph, meter);
-      if (embedding.kind !== "embedded") continue;
-      const itemOf = Int32Array.from(
-        labels,
-        (id) => id < vertices.length ? positive.vertices[vertices[id]] : -1,
-      );
-      best = { graph, embedding, itemOf };
+      const embedding = evenFaceEmbedding(graph, meter, { witness: false });
+      if (embedding.kind === "embedded") best = { graph, embedding, itemOf: itemOf(labels) };
     }
   }
   return best;

@@ -132,8 +132,8 @@ describe("the curve across strong edges", () => {
 });
 
 describe("drawEmbedding", () => {
-  const gridInstance = (rows: number, columns: number) => {
-    const graph = mirroredGrid(rows, columns);
+  const gridInstance = (rows: number, columns: number) => asInstance(mirroredGrid(rows, columns));
+  const asInstance = (graph: Graph) => {
     const weights = hardWeights(graph, new Random(4));
     return Instance.from({
       items: Array.from(weights, (weight, i) => ({ id: `v${i}`, weight })),
@@ -145,6 +145,19 @@ describe("drawEmbedding", () => {
     const picture = await drawEmbedding(gridInstance(7, 9));
     expect(picture.title).toContain("63 items and 119 conflicts");
     expect(markupProblem(picture.svg)).toBe(undefined);
+  });
+
+  it("lets gadgets stand for blocks that cannot be drawn", async () => {
+    // Four and four, all joined across, hung across a square of the grid: not planar.
+    const grid = mirroredGrid(7, 9);
+    const pairs = Array.from(grid.tails, (u, e): [number, number] => [u, grid.heads[e]]);
+    for (let a = 63; a < 67; a++) for (let b = 67; b < 71; b++) pairs.push([a, b]);
+    pairs.push([10, 63], [20, 64]);
+    const picture = await drawEmbedding(asInstance(graphFromPairs(71, pairs)));
+    expect(picture.title).toContain("63 items and ");
+    expect(picture.svg).toContain("stands for a block");
+    const plain = await drawEmbedding(asInstance(grid));
+    expect(plain.svg).not.toContain("stands for a block");
   });
 
   it("says so where there is no such part", async () => {
