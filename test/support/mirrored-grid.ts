@@ -39,6 +39,38 @@ export function mirroredGrid(rows: number, columns: number): Graph {
 }
 
 /**
+ * A square mirrored grid with a fifth of its edges taken out, where both ends keep two, and a tenth drawn
+ * out to paths of three; vertices and edges in random order. Faces stay even. O(n) time.
+ *
+ * @param side as `rows` and `columns` of `mirroredGrid`
+ * @returns a simple graph; a few vertices may be cut off from the rest
+ */
+export function thinnedGrid(side: number, random: Random): Graph {
+  const grid = mirroredGrid(side, side);
+  const left = new Int32Array(grid.n);
+  for (let v = 0; v < grid.n; v++) left[v] = grid.offsets[v + 1] - grid.offsets[v];
+  const pairs: (readonly [number, number])[] = [];
+  let n = grid.n;
+  for (let e = 0; e < grid.m; e++) {
+    const u = grid.tails[e], v = grid.heads[e];
+    if (left[u] > 2 && left[v] > 2 && random.below(5) === 0) {
+      left[u]--;
+      left[v]--;
+    } else if (random.below(10) === 0) {
+      pairs.push([u, n], [n, n + 1], [n + 1, v]);
+      n += 2;
+    } else pairs.push([u, v]);
+  }
+  const name = random.shuffle(Int32Array.from({ length: n }, (_, v) => v));
+  random.shuffle(pairs);
+  return graphFromEdges(
+    n,
+    Int32Array.from(pairs, ([u]) => name[u]),
+    Int32Array.from(pairs, ([, v]) => name[v]),
+  );
+}
+
+/**
  * Weights that make all-half optimal for the relaxation: w = Mᵀc for random edge costs c.
  *
  * @param graph a graph without isolated vertices
