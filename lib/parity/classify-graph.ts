@@ -64,7 +64,7 @@ export function classifyGraph(graph: Graph, meter: Meter): GraphClass {
     const found = evenFaceEmbedding(graph, meter, { witness: false });
     evenFace = found.kind === "embedded" ? "yes" : "no";
     if (found.kind === "embedded") {
-      const transversal = embeddedTransversal(graph, found, meter);
+      const transversal = embeddedTransversal(found, meter);
       return {
         kind: transversal.lower >= 3 ? "projective" : kindOf(transversal, undefined),
         transversal,
@@ -115,8 +115,7 @@ function kindOf(transversal: Transversal, packing: OddCyclePacking | undefined):
 /** The transversal with the lower bound that an embedding after the replacement of blocks gives. */
 function raised(quick: Transversal, packing: OddCyclePacking, meter: Meter): Transversal {
   if (packing.embedded === undefined) return quick;
-  const { graph, embedding } = packing.embedded;
-  const { lower } = embeddedTransversal(graph, embedding, meter);
+  const { lower } = embeddedTransversal(packing.embedded, meter);
   const { stopped, ...bounds } = { ...quick, lower: Math.max(quick.lower, lower) };
   return stopped === undefined || bounds.lower === bounds.upper ? bounds : { ...bounds, stopped };
 }

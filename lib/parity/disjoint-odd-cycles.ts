@@ -38,7 +38,7 @@ export interface TwoDisjoint {
    * Where an even-face embedding settled it: no transversal has fewer vertices than a least one of
    * this graph.
    */
-  readonly embedded?: { readonly graph: Graph; readonly embedding: EvenFaceEmbedding };
+  readonly embedded?: EvenFaceEmbedding;
 }
 
 /** What the decision may be told. */
@@ -169,7 +169,7 @@ function beyondThree(
       const because = replaced
         ? "it has an even-face embedding in the projective plane once its blocks are replaced"
         : "it has an even-face embedding in the projective plane";
-      return { exist: false, because, embedded: { graph, embedding } };
+      return { exist: false, because, embedded: embedding };
     }
     if (look && !replaced && glimpseOddCyclePair(graph, meter, [], LOOK_SCANS / 10) !== undefined) {
       return { exist: true, because: "two were found" };

@@ -21,17 +21,16 @@ const FULL_SCANS = 300_000_000;
 /**
  * Finds a least odd cycle transversal on an embedding.
  *
- * @param graph the embedded graph H
- * @param embedding its even-face embedding
+ * @param embedding a graph H with its even-face embedding
  * @param meter counts about one unit for each arc; when it runs out the bounds so far return
  * @returns a transversal, with one odd cycle: there are no two disjoint ones. Least if it has at most
  *   twelve vertices, or if the graph is of moderate size (about 10,000 vertices).
  */
 export function embeddedTransversal(
-  graph: Graph,
   embedding: EvenFaceEmbedding,
   meter: Meter,
 ): Transversal {
+  const { graph } = embedding;
   const { oddCycle } = twoColouring(graph);
   if (oddCycle === undefined) throw new RangeError("expected a graph that is not bipartite");
   const search = new CurveSearch(embedding);

@@ -17,10 +17,9 @@ import { solveByTransversal } from "./transversal.ts";
 
 /** Engines by name, in the order in which they are asked. */
 type Asked = readonly (readonly [EngineName, Engine])[];
-/** The special engines of near-linear time. */
+/** The special engines of near-linear time, and the other one. */
 const FAST: Asked = [["bipartite", solveBipartite], ["projective", solveProjective]];
-/** All special engines. */
-const SPECIAL: Asked = [...FAST, ["transversal", solveByTransversal]];
+const SLOW: Asked = [["transversal", solveByTransversal]];
 
 /** Work of branch and bound before HiGHS is asked for a better start: about 15 s. */
 const FIRST_BRANCH_WORK = 2 ** 32;
@@ -50,14 +49,19 @@ export async function solvePiece(
   const atOnce = await ask(FAST, piece, only, meter);
   if (atOnce.solved !== undefined) return atOnce;
   const reduced = withoutBlocks(piece, meter);
-  if (reduced === undefined) return await byEngines(piece, only, meter);
+  if (reduced === undefined) return await byOthers(piece, only, meter, atOnce.why);
   const { pieces, figures } = reduced;
   const results: PieceResult[] = [];
   // The smaller pieces count in half units and from another zero: their bounds are not reported.
   const reporting = meter.reporting(({ phase, done, total, elapsedMs }) => (
     { phase, done, total, elapsedMs }
   ));
-  for (const smaller of pieces) results.push(await byEngines(smaller, only, reporting));
+  for (const smaller of pieces) {
+    const fast = await ask(FAST, smaller, only, reporting);
+    results.push(
+      fast.solved !== undefined ? fast : await byOthers(smaller, only, reporting, fast.why),
+    );
+  }
   // Lifting is as cheap as the tables were, and must happen even when the time is up.
   const { status, ...combined } = withStatus(
     reduced.combine(results.map((r) => r.solved), new Meter()),
@@ -101,7 +105,7 @@ async function ask(
   piece: Piece,
   only: EngineName | undefined,
   meter: Meter,
-): Promise<PieceResult | { readonly why: string[]; readonly solved?: undefined }> {
+): Promise<PieceResult | Pick<PieceResult, "why"> & { readonly solved?: undefined }> {
   const why: string[] = [];
   for (const [name, engine] of engines) {
     if (only !== undefined && only !== name) continue;
@@ -114,15 +118,16 @@ async function ask(
   return { why };
 }
 
-/** Asks the engines in turn; the last ones take everything. */
-async function byEngines(
+/** Asks the engines that are left when the fast ones have declined; the last ones take everything. */
+async function byOthers(
   piece: Piece,
   only: EngineName | undefined,
   meter: Meter,
+  declined: readonly string[],
 ): Promise<PieceResult> {
-  const special = await ask(SPECIAL, piece, only, meter);
-  if (special.solved !== undefined) return special;
-  const { why } = special;
+  const slow = await ask(SLOW, piece, only, meter);
+  const why = [...declined, ...slow.why];
+  if (slow.solved !== undefined) return { ...slow, why };
   if (meter.interruption === undefined) {
     if (only === undefined) return await byBranching(piece, meter, why);
     if (only === "branch") return { engine: only, why, solved: await branch(piece, meter) };

@@ -4,7 +4,7 @@
  * Conforti, Fiorini, Huynh, Joret and Weltge, "The stable set problem in graphs with bounded genus and
  * bounded odd cycle packing number" (SODA 2020) for slacks as circulations in the dual (written from
  * memory). Recognition, dual and lifting take near-linear time; projective/least-cycle.ts says what
- * the searches take.
+ * the search takes.
  */
 import type { Graph } from "../graph/graph.ts";
 import { evenFaceEmbedding } from "../parity/even-face.ts";
@@ -36,8 +36,8 @@ export function solveProjective(piece: Piece, meter: Meter): Solved | Declined {
   if (hasParallelEdges(graph)) {
     return { status: "declined", reason: "it has parallel edges" };
   }
-  const { around } = inUnits(graph, weights, doubledCosts);
-  if (!(around.reduce((sum, cost) => sum + cost, 0) <= MOST_AROUND)) {
+  const twice = 2 * weights.reduce((sum, weight) => sum + weight, 0);
+  if (!(twice / greatestCommonDivisor(doubledCosts) <= MOST_AROUND)) {
     return { status: "declined", reason: "its costs are too large to add up distances exactly" };
   }
   meter.report("even-face embedding", { done: 0, total: 1 });

@@ -157,7 +157,7 @@ describe("embeddedTransversal", () => {
     const check = (graph: Graph): void => {
       const embedding = evenFaceEmbedding(graph, new Meter(), { witness: false });
       if (embedding.kind !== "embedded") return;
-      const found = embeddedTransversal(graph, embedding, new Meter());
+      const found = embeddedTransversal(embedding, new Meter());
       const { lower, upper } = leastTransversal(graph, new Meter());
       expect([found.lower, found.upper]).toEqual([lower, upper]);
       expect(isTransversal(graph, found.vertices)).toBe(true);

@@ -75,7 +75,7 @@ describe("oddCyclePacking", () => {
       if (exist !== two) throw new Error(`case ${i}: ${exist}, because ${because}`);
       const { lower, upper } = leastTransversal(graph, new Meter());
       if (embedded !== undefined) {
-        const least = embeddedTransversal(embedded.graph, embedded.embedding, new Meter());
+        const least = embeddedTransversal(embedded, new Meter());
         if (least.lower > upper) {
           throw new Error(`case ${i}: ${upper} vertices, not ${least.lower}`);
         }
