@@ -88,8 +88,8 @@ export class RehungTree {
   }
 
   /**
-   * The spanning tree of the cover's vertices, with its slacks. The largest branch at a vertex comes
-   * right after it in memory.
+   * The spanning tree of the cover's vertices, with its slacks. Records stand in depth-first order, so
+   * that leading on mostly means going back one in memory.
    *
    * @param inTree length 2m: 1 for darts whose arcs are in the tree of faces
    * @param state distances as `shortestPaths` gives them
@@ -98,49 +98,30 @@ export class RehungTree {
   #span(inTree: Uint8Array, state: Int32Array | Float64Array): Int32Array {
     const { offsets, targets, reverse } = this.inner;
     const { left, right, edgeOf } = this.dual, records = this.#vertices;
-    const n = offsets.length - 1;
-    // One after the other: vertices as they are met, from which one (by its rank), and by which edge.
-    const order = new Int32Array(2 * n), from = new Int32Array(2 * n), by = new Int32Array(2 * n);
-    const met = new Uint8Array(2 * n);
-    met[0] = 1;
-    let tail = 1;
-    for (let head = 0; head < tail; head++) {
-      const white = order[head] & 1, v = order[head] >> 1;
-      for (let d = offsets[v]; d < offsets[v + 1]; d++) {
-        const y = 2 * targets[d] + 1 - white;
-        if (met[y] !== 0) continue;
-        const edge = white === 0 ? d : reverse[d];
-        if (inTree[edge] !== 0) continue;
-        met[y] = 1;
-        order[tail] = y;
-        from[tail] = head;
-        by[tail++] = edge;
-      }
-    }
-    if (tail < 2 * n) throw new Rejected("projective: the edges do not span the cover");
-    const branch = new Int32Array(2 * n).fill(1), main = new Int32Array(2 * n).fill(-1);
-    for (let i = 2 * n - 1; i > 0; i--) {
-      const k = from[i];
-      branch[k] += branch[i];
-      if (main[k] < 0 || branch[i] > branch[main[k]]) main[k] = i;
-    }
-    const place = new Int32Array(2 * n), free = new Int32Array(2 * n), name = new Int32Array(2 * n);
-    for (let i = 0; i < 2 * n; i++) {
-      const k = from[i];
-      if (i > 0 && main[k] === i) place[i] = place[k] + 1;
-      else if (i > 0) {
-        place[i] = free[k];
-        free[k] += branch[i];
-      }
-      free[i] = place[i] + 1 + (main[i] < 0 ? 0 : branch[main[i]]);
-      const record = RECORD * place[i], d = by[i];
-      name[order[i]] = record + (order[i] & 1);
-      records[record + EDGE] = i > 0 ? d : -1;
-      records[record + ONWARD] = i > 0 ? name[order[k]] : -1;
+    const n = offsets.length - 1, name = new Int32Array(2 * n);
+    // Vertices still to come, what their predecessors are called, and the edges that lead there.
+    const open = new Int32Array(2 * n), onward = new Int32Array(2 * n), by = new Int32Array(2 * n);
+    onward[0] = by[0] = -1;
+    let count = 0;
+    for (let top = 1; top > 0;) {
+      if (count === 2 * n) throw new Rejected("projective: the edges hold a cycle of the cover");
+      const x = open[--top], white = x & 1, d = by[top], record = RECORD * count++;
+      const own = name[x] = record + white;
+      records[record + EDGE] = d;
+      records[record + ONWARD] = onward[top];
       records[record + RAISED] = AWAY;
-      if (i === 0) continue;
-      records[record + SLACK] = this.costs[edgeOf[d]] + state[2 * right[d]] - state[2 * left[d]];
+      if (d >= 0) {
+        records[record + SLACK] = this.costs[edgeOf[d]] + state[2 * right[d]] - state[2 * left[d]];
+      }
+      for (let a = offsets[x >> 1]; a < offsets[(x >> 1) + 1]; a++) {
+        const edge = white === 0 ? a : reverse[a];
+        if (edge === d || inTree[edge] !== 0) continue;
+        open[top] = 2 * targets[a] + 1 - white;
+        onward[top] = own;
+        by[top++] = edge;
+      }
     }
+    if (count < 2 * n) throw new Rejected("projective: the edges do not span the cover");
     return name;
   }
 

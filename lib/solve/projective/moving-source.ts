@@ -85,7 +85,7 @@ export class MovingSource {
     this.#sides = sides;
     const crossed = new Uint8Array(2 * m);
     for (let x = 0; x < 2 * pairs; x++) if (x !== source) crossed[tree[2 * x + 1]] = 1;
-    const { places, vertices, next, darts } = cotreeOf(graph, crossed, meter);
+    const { places, next, darts } = cotreeOf(graph, crossed, meter);
 
     meter.tick(2 * pairs);
     const faces = this.#faces = new Int32Array(2 * pairs * FIELDS);
@@ -106,7 +106,7 @@ export class MovingSource {
     for (let place = 0; place < 2 * n; place++) {
       const link = FIELDS * place, d = darts[place];
       links[link + DART] = d;
-      links[link + NEXT] = d < 0 ? -1 : FIELDS * next[place] + (vertices[next[place]] & 1);
+      links[link + NEXT] = d < 0 ? -1 : FIELDS * places[next[place]] + (next[place] & 1);
       links[link + SINCE] = OFF;
       if (d < 0) continue;
       links[link + SLACK] = costs[d >> 1] + tree[2 * sides[2 * d + 1]] - tree[2 * sides[2 * d]];

@@ -18,8 +18,9 @@ export interface SourceWalk {
 }
 
 /**
- * Finds a walk of few faces: through the middle of one that has the fewest from some face to its
- * antipode, the walk with the fewest.
+ * Finds a walk of few faces: on a way from some face to its antipode with the fewest, the first part
+ * that leads from a face to its antipode. The walk need not be shortest; what matters is how many faces
+ * change their place in the tree of shortest paths, and that is hardly more.
  *
  * @param graph H
  * @param costs length m, what the arcs across each edge cost
@@ -33,8 +34,7 @@ export function sourceWalk(
   around: Float64Array,
   meter: Meter,
 ): SourceWalk {
-  const first = fewestFaces(dual, 0, meter);
-  const faces = fewestFaces(dual, first[first.length >> 1], meter);
+  const faces = fewestFaces(dual, 0, meter);
   const there = new Float64Array(faces.length), back = new Float64Array(faces.length);
   for (let i = 1; i < faces.length; i++) {
     there[i] = stepFrom(faces[i - 1], faces[i]);
@@ -59,7 +59,10 @@ export function sourceWalk(
 /** Arcs scanned between two ticks of the meter. */
 const UNITS_PER_TICK = 4096;
 
-/** A walk with the fewest faces from this face to its antipode, which is left out. O(m) time. */
+/**
+ * A walk with the fewest faces from this face to its antipode, or where it passes a face and then the
+ * antipode of that, the part between. The antipode at the end is left out. O(m) time.
+ */
 function fewestFaces({ pairs, out, into }: DirectedDual, root: number, meter: Meter): Int32Array {
   const from = new Int32Array(2 * pairs).fill(-1), queue = new Int32Array(2 * pairs);
   const { offsets } = out;
@@ -83,7 +86,6 @@ function fewestFaces({ pairs, out, into }: DirectedDual, root: number, meter: Me
       work = 0;
     }
   }
-  // Back to the root, or to the first face whose antipode has been passed: a shorter walk is in there.
   const faces: number[] = [], place = new Map<number, number>();
   for (let x = root ^ 1;; x = from[x]) {
     const met = place.get(x ^ 1);
